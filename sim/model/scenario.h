@@ -1,0 +1,154 @@
+// The scenario: plain values with visible defaults. Parsing (sim/config) only fills them in.
+// `Science` is everything that decides which studies are conducted; `Rules` is everything that
+// decides what becomes of them. Regimes with equal science share their conducted studies.
+#pragma once
+
+#include <cstdint>
+#include <string>
+#include <vector>
+
+#include "sim/model/claim.h"
+#include "sim/stats/distribution.h"
+
+namespace lacuna {
+
+/// [run]
+struct Run {
+    std::uint64_t seed = 1;          // 0 .. 2^63-1 in a config (TOML integers are signed)
+    std::uint64_t literatures = 100; // 1 .. 2^32-1
+};
+
+/// [field]
+struct Field {
+    std::uint64_t questions = 1000;
+    std::uint64_t labs = 100;
+    double true_rate = 0.5;                              // chance that a question is real
+    Distribution effect = Distribution::fixed(0.5);      // of real questions, on the design's scale
+    Distribution null_effect = Distribution::fixed(0.0); // of the others
+    double heterogeneity = 0.0;                          // SD of a study's true effect around its question's
+    double negligible = 0.0;                             // |effect| at or below counts as null
+};
+
+enum class Test : std::uint8_t { two_means, known_variance };
+enum class EffectEstimate : std::uint8_t { d, g };
+
+/// How many observations a study takes (per group in two-means).
+struct SizePlan {
+    enum class Kind : std::uint8_t { fixed, distribution, power };
+    Kind kind = Kind::fixed;
+    std::uint32_t n = 20;         // fixed
+    Distribution distribution;    // distribution
+    bool round_down = false;      // distribution: floor instead of nearest (halves up)
+    double power = 0.8;           // power: the target, two-sided tests counting both tails
+    double effect = 0.5;          // power: the planning effect
+};
+
+/// [design]
+struct Design {
+    Test test = Test::two_means;
+    double alpha = 0.05;
+    int sides = 2;                                 // 1: significant only in the predicted direction
+    Findings findings = Findings::either;
+    EffectEstimate estimate = EffectEstimate::d;   // what two-means studies report
+    SizePlan size;
+};
+
+/// How many studies a line holds.
+struct LineRule {
+    enum class Kind : std::uint8_t {
+        fixed,           // `count` studies
+        until_positive,  // stops after the first finding, at most `limit` studies
+        until_failures   // stops after `failures` studies that do not find, at most `limit` studies
+    };
+    Kind kind = Kind::fixed;
+    std::uint32_t count = 1;
+    std::uint32_t failures = 1;
+    std::uint32_t limit = 1;
+
+    std::uint32_t longest() const { return kind == Kind::fixed ? count : limit; }
+};
+
+/// [[lab]]: a kind of lab.
+struct LabKind {
+    std::string name = "lab";
+    double share = 1.0;                               // chance that a lab is of this kind
+    Distribution lines = Distribution::fixed(1.0);    // lines a lab runs, rounded to nearest
+    LineRule studies;
+    SizePlan size;                                    // the design's, unless the kind has its own
+};
+
+/// Everything upstream of the manuscript.
+struct Science {
+    Field field;
+    Design design;
+    std::vector<LabKind> labs;
+};
+
+enum class Unit : std::uint8_t {
+    study,    // every study is a manuscript
+    line,     // every line is one manuscript
+    findings  // a line's manuscript holds only the studies that find; a line without any, all of them
+};
+
+/// [writing]: chance that a manuscript is written up, by class.
+struct Writing {
+    Unit unit = Unit::study;
+    double supportive = 1.0, mixed = 1.0, null = 1.0;
+};
+
+/// A journal's acceptance chance.
+struct Acceptance {
+    enum class Kind : std::uint8_t { by_class, by_p };
+    Kind kind = Kind::by_class;
+    double supportive = 1.0, mixed = 1.0, null = 1.0;  // by_class
+    // by_p: the manuscript's smallest p; chance[i] holds for p below steps[i] (ascending), the last
+    // of the steps.size()+1 chances for p at or above the last step.
+    std::vector<double> steps;
+    std::vector<double> chance;
+    int sides = 2;  // 1: p of the one-sided test in the predicted direction
+};
+
+/// [[journal]]
+struct Journal {
+    std::string name = "journal";
+    Acceptance accept;
+    double results_blind = 0.0;        // share of submissions judged before results are seen
+    double results_blind_chance = 1.0; // acceptance chance of those; default: the highest of `accept`
+};
+
+/// [submission]
+struct Submission {
+    std::uint32_t attempts = 1;  // journals tried in the order of the config before giving up
+};
+
+/// Everything from the manuscript on. With no journal, whatever is written is published.
+struct Rules {
+    Writing writing;
+    std::vector<Journal> journals;
+    Submission submission;
+};
+
+/// [[regime]]: one set of publication rules.
+struct Regime {
+    std::string name;
+    Science science;
+    Rules rules;
+};
+
+enum class Detail : std::uint8_t { literatures, manuscripts, studies };
+
+/// [store]
+struct StorePlan {
+    Detail detail = Detail::literatures;
+    bool compress = true;
+};
+
+/// A config, resolved: every default filled in, every regime spelled out (at least one).
+struct Scenario {
+    std::string title;
+    Run run;
+    std::vector<Regime> regimes;
+    StorePlan store;
+};
+
+}  // namespace lacuna
