@@ -16,6 +16,8 @@ namespace lacuna {
 struct Run {
     std::uint64_t seed = 1;          // 0 .. 2^63-1 in a config (TOML integers are signed)
     std::uint64_t literatures = 100; // 1 .. 2^32-1
+
+    bool operator==(const Run&) const = default;
 };
 
 /// [field]
@@ -27,6 +29,8 @@ struct Field {
     Distribution null_effect = Distribution::fixed(0.0); // of the others
     double heterogeneity = 0.0;                          // SD of a study's true effect around its question's
     double negligible = 0.0;                             // |effect| at or below counts as null
+
+    bool operator==(const Field&) const = default;
 };
 
 enum class Test : std::uint8_t { two_means, known_variance };
@@ -41,6 +45,8 @@ struct SizePlan {
     bool round_down = false;      // distribution: floor instead of nearest (halves up)
     double power = 0.8;           // power: the target, two-sided tests counting both tails
     double effect = 0.5;          // power: the planning effect
+
+    bool operator==(const SizePlan&) const = default;
 };
 
 /// [design]
@@ -51,6 +57,8 @@ struct Design {
     Findings findings = Findings::either;
     EffectEstimate estimate = EffectEstimate::d;   // what two-means studies report
     SizePlan size;
+
+    bool operator==(const Design&) const = default;
 };
 
 /// How many studies a line holds.
@@ -66,6 +74,7 @@ struct LineRule {
     std::uint32_t limit = 1;
 
     std::uint32_t longest() const { return kind == Kind::fixed ? count : limit; }
+    bool operator==(const LineRule&) const = default;
 };
 
 /// [[lab]]: a kind of lab.
@@ -75,6 +84,8 @@ struct LabKind {
     Distribution lines = Distribution::fixed(1.0);    // lines a lab runs, rounded to nearest
     LineRule studies;
     SizePlan size;                                    // the design's, unless the kind has its own
+
+    bool operator==(const LabKind&) const = default;
 };
 
 /// Everything upstream of the manuscript.
@@ -82,6 +93,8 @@ struct Science {
     Field field;
     Design design;
     std::vector<LabKind> labs;
+
+    bool operator==(const Science&) const = default;
 };
 
 enum class Unit : std::uint8_t {
@@ -94,6 +107,8 @@ enum class Unit : std::uint8_t {
 struct Writing {
     Unit unit = Unit::study;
     double supportive = 1.0, mixed = 1.0, null = 1.0;
+
+    bool operator==(const Writing&) const = default;
 };
 
 /// A journal's acceptance chance.
@@ -106,6 +121,8 @@ struct Acceptance {
     std::vector<double> steps;
     std::vector<double> chance;
     int sides = 2;  // 1: p of the one-sided test in the predicted direction
+
+    bool operator==(const Acceptance&) const = default;
 };
 
 /// [[journal]]
@@ -114,11 +131,15 @@ struct Journal {
     Acceptance accept;
     double results_blind = 0.0;        // share of submissions judged before results are seen
     double results_blind_chance = 1.0; // acceptance chance of those; default: the highest of `accept`
+
+    bool operator==(const Journal&) const = default;
 };
 
 /// [submission]
 struct Submission {
     std::uint32_t attempts = 1;  // journals tried in the order of the config before giving up
+
+    bool operator==(const Submission&) const = default;
 };
 
 /// Everything from the manuscript on. With no journal, whatever is written is published.
@@ -126,6 +147,8 @@ struct Rules {
     Writing writing;
     std::vector<Journal> journals;
     Submission submission;
+
+    bool operator==(const Rules&) const = default;
 };
 
 /// [[regime]]: one set of publication rules.
@@ -133,6 +156,8 @@ struct Regime {
     std::string name;
     Science science;
     Rules rules;
+
+    bool operator==(const Regime&) const = default;
 };
 
 enum class Detail : std::uint8_t { literatures, manuscripts, studies };
@@ -141,6 +166,8 @@ enum class Detail : std::uint8_t { literatures, manuscripts, studies };
 struct StorePlan {
     Detail detail = Detail::literatures;
     bool compress = true;
+
+    bool operator==(const StorePlan&) const = default;
 };
 
 /// A config, resolved: every default filled in, every regime spelled out (at least one).
@@ -149,6 +176,8 @@ struct Scenario {
     Run run;
     std::vector<Regime> regimes;
     StorePlan store;
+
+    bool operator==(const Scenario&) const = default;
 };
 
 }  // namespace lacuna

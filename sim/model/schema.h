@@ -17,6 +17,11 @@ struct ScienceGroups {
 };
 ScienceGroups group_by_science(const std::vector<Regime>& regimes);
 
+/// Names of all lab kinds and all journals over all regimes, each once: labels of the enumerations in
+/// the detail tables. The journals begin with "none".
+std::vector<std::string> all_kind_names(const Scenario& scenario);
+std::vector<std::string> all_journal_names(const Scenario& scenario);
+
 /// The tables that `detail` asks for, in the order in which they are written: none for literatures;
 /// questions, labs and manuscripts; and studies as well.
 std::vector<TableSpec> detail_tables(const Scenario& scenario);

@@ -27,7 +27,11 @@ struct Distribution {
     std::vector<double> values;   // discrete only
     std::vector<double> weights;  // discrete only; need not sum to 1
 
-    static Distribution fixed(double value) { return {Family::fixed, value}; }
+    static Distribution fixed(double value) {
+        Distribution distribution;
+        distribution.first = value;
+        return distribution;
+    }
     bool operator==(const Distribution&) const = default;
 };
 

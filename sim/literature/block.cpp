@@ -1,0 +1,71 @@
+#include "sim/literature/block.h"
+
+#include <algorithm>
+#include <cmath>
+
+#include "sim/literature/details.h"
+
+namespace lacuna {
+
+namespace {
+
+/// Studies in a block that keep its columns in the second-level cache.
+constexpr double studies_wanted = 8192.0;
+constexpr std::uint64_t most_questions = 65536;
+
+double upper_studies(const Science& science) {
+    double each = 0.0;
+    for (const LabKind& kind : science.labs) each += kind.share * mean(kind.lines) * kind.studies.longest();
+    return each * static_cast<double>(science.field.labs);
+}
+
+}  // namespace
+
+QuestionRange Blocks::range(std::uint64_t block) const {
+    return {block * questions_a_block, std::min(questions, (block + 1) * questions_a_block)};
+}
+
+Blocks cut_into_blocks(const Scenario& scenario) {
+    Blocks blocks{0, 0, 0, 0.0};
+    for (const Regime& regime : scenario.regimes) {
+        blocks.questions = std::max(blocks.questions, regime.science.field.questions);
+        blocks.studies_a_literature = std::max(blocks.studies_a_literature, upper_studies(regime.science));
+    }
+    const double per_question = blocks.studies_a_literature / static_cast<double>(blocks.questions);
+    const double wanted = std::clamp(studies_wanted / std::max(per_question, 1e-9), 32.0, double(most_questions));
+    blocks.questions_a_block = static_cast<std::uint64_t>(std::ceil(wanted / 32.0)) * 32;
+    blocks.count = (blocks.questions + blocks.questions_a_block - 1) / blocks.questions_a_block;
+    return blocks;
+}
+
+std::vector<Roster> draw_rosters(const PreparedScenario& prepared, StreamKey key, std::uint32_t literature) {
+    std::vector<Roster> rosters;
+    for (const PreparedScience& science : prepared.sciences) rosters.push_back(draw_roster(science, key, literature));
+    return rosters;
+}
+
+std::uint64_t simulate_block(const PreparedScenario& prepared, StreamKey key, std::uint32_t literature,
+                             const std::vector<Roster>& rosters, QuestionRange range, BlockScratch& scratch,
+                             std::vector<Tally>& tallies, std::map<std::string, Batch>& details) {
+    std::uint64_t studies = 0;
+    scratch.outcomes.resize(prepared.rules.size());
+    for (std::size_t s = 0; s < prepared.sciences.size(); ++s) {
+        const PreparedScience& science = prepared.sciences[s];
+        // Regimes may differ in how many questions the field has.
+        const std::uint64_t questions = science.science.field.questions;
+        const QuestionRange its{std::min(range.first, questions), std::min(range.last, questions)};
+        conduct(science, key, rosters[s], literature, its, scratch.conduct, scratch.block);
+        gather_facts(science, scratch.block, scratch.count);
+        studies += scratch.block.studies.claim.size();
+        const bool single = one_study_a_question(science, rosters[s]);
+        for (std::size_t r = 0; r < prepared.rules.size(); ++r) {
+            if (prepared.groups.science_of[r] != s) continue;
+            publish(key, prepared.rules[r], scratch.block, scratch.chain, scratch.outcomes[r]);
+            count_outcome(prepared.rules[r], scratch.block, scratch.outcomes[r], single, scratch.count, tallies[r]);
+        }
+        if (!details.empty()) add_details(prepared, s, rosters[s], scratch.block, scratch.outcomes, details);
+    }
+    return studies;
+}
+
+}  // namespace lacuna

@@ -1,0 +1,80 @@
+#include "sim/literature/count.h"
+
+namespace lacuna {
+
+namespace {
+
+bool is_real(const Conducted& block, std::uint32_t line) {
+    return block.questions.truth[block.lines.question[line]] != static_cast<std::uint8_t>(Truth::null);
+}
+
+void count_manuscripts(const PreparedRules& rules, const Conducted& block, const Outcome& outcome, Tally& tally) {
+    const std::size_t count = outcome.manuscript_class.size();
+    for (std::size_t m = 0; m < count; ++m) {
+        const std::uint32_t line = rules.unit == Unit::study ? block.studies.line[m] : static_cast<std::uint32_t>(m);
+        tally.add_manuscript(is_real(block, line), ManuscriptClass(outcome.manuscript_class[m]),
+                             Status(outcome.manuscript_status[m]));
+    }
+}
+
+void count_questions(const PreparedRules& rules, const Conducted& block, const Outcome& outcome,
+                     CountScratch& scratch, Tally& tally) {
+    const std::size_t questions = block.questions.truth.size();
+    for (auto& counts : scratch.in_scope) counts.assign(questions, {});
+    for (std::size_t s = 0; s < outcome.status.size(); ++s) {
+        const std::uint32_t q = block.lines.question[block.studies.line[s]];
+        const std::uint32_t finding = is_finding(Claim(block.studies.claim[s]), rules.findings);
+        for (std::size_t scope = 0; scope <= outcome.status[s]; ++scope) {
+            ++scratch.in_scope[scope][q].studies;
+            scratch.in_scope[scope][q].findings += finding;
+        }
+    }
+    for (std::size_t q = 0; q < questions; ++q) {
+        const bool real = block.questions.truth[q] != static_cast<std::uint8_t>(Truth::null);
+        for (std::size_t scope = 0; scope < 3; ++scope) tally.add_question(real, Scope(scope), scratch.in_scope[scope][q]);
+    }
+}
+
+}  // namespace
+
+void gather_facts(const PreparedScience& science, const Conducted& block, CountScratch& scratch) {
+    const Studies& studies = block.studies;
+    const std::size_t count = studies.claim.size();
+    scratch.truth.resize(count);
+    scratch.effect.resize(count);
+    scratch.participants.resize(count);
+    for (std::size_t s = 0; s < count; ++s) {
+        const std::uint32_t q = block.lines.question[studies.line[s]];
+        scratch.truth[s] = block.questions.truth[q];
+        scratch.effect[s] = block.questions.effect[q];
+        scratch.participants[s] = science.table.participants[studies.row[s]];
+    }
+    scratch.kind.resize(block.lines.kind.empty() ? 0 : count);
+    for (std::size_t s = 0; s < scratch.kind.size(); ++s) scratch.kind[s] = block.lines.kind[studies.line[s]];
+    make_study_facts({count, scratch.truth.data(), studies.claim.data(),
+                      scratch.kind.empty() ? nullptr : scratch.kind.data(), studies.estimate.data(),
+                      scratch.effect.data(), scratch.participants.data()},
+                     scratch.facts);
+}
+
+bool one_study_a_question(const PreparedScience& science, const Roster& roster) {
+    if (roster.lines > science.science.field.questions) return false;
+    for (const LabKind& kind : science.science.labs) {
+        if (kind.studies.longest() > 1) return false;
+    }
+    return true;
+}
+
+void count_outcome(const PreparedRules& rules, const Conducted& block, const Outcome& outcome, bool single,
+                   CountScratch& scratch, Tally& tally) {
+    tally.add_studies(scratch.facts, outcome.status.data());
+    if (single) {
+        tally.count_studies_as_manuscripts();
+        tally.count_studies_as_questions();
+        return;
+    }
+    count_manuscripts(rules, block, outcome, tally);
+    count_questions(rules, block, outcome, scratch, tally);
+}
+
+}  // namespace lacuna

@@ -1,0 +1,39 @@
+// What is worked out once per science before any literature is simulated.
+#pragma once
+
+#include <string>
+#include <vector>
+
+#include "sim/design/test_table.h"
+#include "sim/model/schema.h"
+#include "sim/publication/chain.h"
+#include "sim/variate/sampler.h"
+
+namespace lacuna {
+
+struct PreparedScience {
+    Science science;
+    TestTable table;
+    Sampler effect, null_effect;
+    std::vector<Sampler> lab_lines;           // per kind
+    std::vector<std::size_t> cuts_two, cuts_one;  // in table.cut_critical, by sidedness
+    bool who_matters;  // whether it must be known which lab runs a line: several kinds, or stored lines
+
+    PreparedScience(const Science& its, const Cuts& cuts, bool lines_are_stored);
+};
+
+/// A scenario, ready to run: its sciences, and each regime's rules.
+struct PreparedScenario {
+    ScienceGroups groups;
+    std::vector<PreparedScience> sciences;
+    std::vector<PreparedRules> rules;  // per regime
+
+    // Codes of the enumerations in the detail tables.
+    std::vector<std::string> kind_names;                 // of all sciences
+    std::vector<std::vector<std::uint8_t>> journal_codes;  // [regime][journal tried, from 1; 0: none]
+
+    std::size_t kind_code(const std::string& name) const;
+    explicit PreparedScenario(const Scenario& scenario);
+};
+
+}  // namespace lacuna

@@ -1,0 +1,66 @@
+// Counting: columns of studies, manuscripts and questions in, sufficient statistics out.
+#pragma once
+
+#include <cstdint>
+#include <vector>
+
+#include "sim/tally/layout.h"
+#include "sim/tally/study_facts.h"
+
+namespace lacuna {
+
+/// What a question's studies amount to, in one scope.
+struct QuestionCount {
+    std::uint32_t studies = 0;
+    std::uint32_t findings = 0;
+};
+
+/// The counts of one literature (or a part of it) under one regime. Parts merge by addition, in the
+/// order in which they are merged: sums of doubles depend on it, so the engine keeps one order.
+class Tally {
+public:
+    Tally(std::size_t kinds, Findings findings);
+
+    /// Every study once. `status`: a Status each.
+    void add_studies(const StudyFacts& facts, const std::uint8_t* status);
+
+    /// One manuscript of a question that is real (and not negligible) or not.
+    void add_manuscript(bool real, ManuscriptClass manuscript_class, Status status) {
+        ++manuscripts_[static_cast<std::size_t>(status)][real][static_cast<std::size_t>(manuscript_class)];
+    }
+
+    /// One question, with its counts in one scope; call once per scope.
+    void add_question(bool real, Scope scope, QuestionCount count);
+
+    /// Takes manuscripts and questions from the study counts added so far, instead of add_manuscript
+    /// and add_question: right where every manuscript is one study and every question has at most one.
+    void count_studies_as_manuscripts();
+    void count_studies_as_questions();
+
+    void merge(const Tally& part);
+    void clear();
+
+    /// The row of sufficient statistics, in the order of Layout(kinds).
+    std::vector<double> row() const;
+
+private:
+    struct Cell {
+        double count = 0, estimate = 0, abs_estimate = 0, effect = 0, participants = 0;
+        double unused[3] = {};  // a cell is a cache line
+    };
+    static constexpr std::size_t lanes = 4;  // copies of the cells, so that additions overlap
+
+    Cell total(std::size_t status, std::size_t cell) const;
+    bool finds(std::size_t cell) const { return is_finding(Claim(cell % 4), findings_); }
+    double median(std::size_t lowest_status, bool findings_only) const;
+
+    std::size_t kinds_, cells_;
+    Findings findings_;
+    std::vector<Cell> sums_;                   // [lane][status][cell]
+    std::vector<std::uint32_t> ratios_;        // [status][finding][bin]
+    std::uint64_t manuscripts_[3][2][3] = {};  // [status][real][class]
+    std::uint64_t questions_[3][2][3] = {};    // [scope][real][standing]
+    bool manuscripts_from_studies_ = false, questions_from_studies_ = false;
+};
+
+}  // namespace lacuna

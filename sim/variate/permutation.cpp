@@ -1,0 +1,48 @@
+#include "sim/variate/permutation.h"
+
+#include <bit>
+
+namespace lacuna {
+
+namespace {
+
+/// A 32-bit mixer: xor-shift and multiply (constants of Appleby's MurmurHash3 finaliser, 2011).
+std::uint32_t mixed(std::uint32_t x) {
+    x ^= x >> 16;
+    x *= 0x85EBCA6Bu;
+    x ^= x >> 13;
+    x *= 0xC2B2AE35u;
+    return x ^ x >> 16;
+}
+
+}  // namespace
+
+Permutation::Permutation(std::uint64_t size, Stream stream) : size_(size) {
+    const unsigned bits = size < 2 ? 2u : static_cast<unsigned>(std::bit_width(size - 1));
+    low_bits_ = bits < 2 ? 1u : bits / 2;
+    high_bits_ = bits < 2 ? 1u : bits - low_bits_;
+    for (std::uint32_t& key : keys_) key = stream();
+}
+
+std::uint64_t Permutation::once(std::uint64_t x) const {
+    // Unbalanced halves keep their places: even rounds change the low half, odd rounds the high one.
+    auto low = static_cast<std::uint32_t>(x & ((std::uint64_t{1} << low_bits_) - 1));
+    auto high = static_cast<std::uint32_t>(x >> low_bits_);
+    const std::uint32_t low_mask = (1u << low_bits_) - 1u;
+    const std::uint32_t high_mask = (1u << high_bits_) - 1u;
+    for (unsigned round = 0; round < 6; round += 2) {
+        low ^= mixed(high ^ keys_[round]) & low_mask;
+        high ^= mixed(low ^ keys_[round + 1]) & high_mask;
+    }
+    return std::uint64_t{high} << low_bits_ | low;
+}
+
+void Permutation::images(std::uint64_t first, std::size_t count, std::vector<std::uint64_t>& out) const {
+    out.resize(count);
+    for (std::size_t i = 0; i < count; ++i) out[i] = once(first + i);
+    for (std::size_t i = 0; i < count; ++i) {
+        while (out[i] >= size_) out[i] = once(out[i]);
+    }
+}
+
+}  // namespace lacuna

@@ -1,0 +1,134 @@
+#include <algorithm>
+#include <catch2/catch.hpp>
+#include <cmath>
+#include <hwy/targets.h>
+#include <numeric>
+
+#include "sim/random/kernels.h"
+#include "tests/oracle/verdict.h"
+
+using namespace lacuna;
+
+namespace {
+
+constexpr StreamKey key{20261201};
+
+/// What the kernels must give, one entity at a time, in plain code and long double.
+double oracle_normal(Address address, std::uint64_t entity) {
+    Stream stream(key, address, entity / 32 * 16 + entity % 16);
+    const auto u1 = static_cast<long double>(stream.uniform());
+    const auto u2 = static_cast<long double>(stream.uniform());
+    const long double radius = std::sqrt(-2.0L * std::log(u1));
+    const long double angle = 2.0L * 3.14159265358979323846264338327950288L * u2;
+    return static_cast<double>(entity / 16 % 2 == 0 ? radius * std::cos(angle) : radius * std::sin(angle));
+}
+
+std::vector<double> all_normals(Address address, std::size_t count) {
+    std::vector<double> out(count);
+    normals(key, address, {0, nullptr, count}, out.data());
+    return out;
+}
+
+double normal_cdf(double x) { return 0.5 * std::erfc(-x * std::sqrt(0.5)); }
+
+}  // namespace
+
+TEST_CASE("Uniform kernels give the bits of the scalar stream, from any start and in any order", "[random]") {
+    const Address address{1, Purpose::writing, 4, 0};
+    for (const std::uint64_t first : {0ull, 1ull, 15ull, 16ull, 31ull, 32ull, 77ull, (1ull << 39) - 3}) {
+        std::vector<double> out(101);
+        uniforms(key, address, {first, nullptr, out.size()}, out.data());
+        for (std::size_t i = 0; i < out.size(); ++i) REQUIRE(out[i] == uniform(key, address, first + i));
+    }
+    const std::vector<std::uint32_t> offsets{5, 5, 900, 31, 32, 16, 0, 4000000000u, 17, 1, 2};
+    std::vector<double> out(offsets.size());
+    uniforms(key, address, {10, offsets.data(), offsets.size()}, out.data());
+    for (std::size_t i = 0; i < out.size(); ++i) REQUIRE(out[i] == uniform(key, address, 10ull + offsets[i]));
+}
+
+TEST_CASE("Normal kernels agree with Box-Muller in long double on every vector target", "[random]") {
+    const Address address{0, Purpose::study_error, 0, 0};
+    for (const std::int64_t target : hwy::SupportedAndGeneratedTargets()) {
+        hwy::SetSupportedTargetsForTest(target);
+        INFO(vector_target());
+        const std::vector<double> z = all_normals(address, 20000);
+        double worst = 0.0;
+        for (std::size_t e = 0; e < z.size(); ++e) {
+            // Near 0 the error is that of the reduced angle, 2^-54 of a turn, times the radius.
+            worst = std::max(worst, std::fabs(z[e] - oracle_normal(address, e)) / std::max(1.0, std::fabs(z[e])));
+        }
+        CHECK(worst < 2e-15);
+        const std::vector<std::uint32_t> offsets{7, 40, 16, 3, 19999, 31, 32};
+        std::vector<double> some(offsets.size());
+        normals(key, address, {0, offsets.data(), offsets.size()}, some.data());
+        for (std::size_t i = 0; i < some.size(); ++i) CHECK(some[i] == z[offsets[i]]);
+        hwy::SetSupportedTargetsForTest(0);
+    }
+}
+
+TEST_CASE("Normals and uniforms have their distributions (Kolmogorov, moments, 4 standard errors)", "[random]") {
+    const std::size_t count = 1u << 20;
+    std::vector<double> z = all_normals({0, Purpose::study_error, 0, 0}, count);
+    double m1 = 0, m2 = 0, m3 = 0, m4 = 0;
+    for (const double x : z) {
+        m1 += x;
+        m2 += x * x;
+        m3 += x * x * x;
+        m4 += x * x * x * x;
+    }
+    const double n = static_cast<double>(count);
+    // Variances of the raw moments of a standard normal: 1, 2, 15, 96.
+    CHECK(std::fabs(m1 / n) < 4 * std::sqrt(1 / n));
+    CHECK(std::fabs(m2 / n - 1) < 4 * std::sqrt(2 / n));
+    CHECK(std::fabs(m3 / n) < 4 * std::sqrt(15 / n));
+    CHECK(std::fabs(m4 / n - 3) < 4 * std::sqrt(96 / n));
+    std::sort(z.begin(), z.end());
+    CHECK(oracle::kolmogorov(z, normal_cdf) < oracle::kolmogorov_bound);
+    std::vector<double> u(count);
+    uniforms(key, {0, Purpose::writing, 0, 0}, {0, nullptr, count}, u.data());
+    std::sort(u.begin(), u.end());
+    CHECK(oracle::kolmogorov(u, [](double x) { return x; }) < oracle::kolmogorov_bound);
+    CHECK(u.front() > 0.0);
+    CHECK(u.back() < 1.0);
+}
+
+TEST_CASE("Neighbouring entities, studies, purposes, literatures and seeds are uncorrelated", "[random]") {
+    const std::size_t count = 1u << 18;
+    const auto correlation = [&](const std::vector<double>& a, const std::vector<double>& b, std::size_t lag) {
+        return std::inner_product(a.begin(), a.end() - static_cast<std::ptrdiff_t>(lag),
+                                  b.begin() + static_cast<std::ptrdiff_t>(lag), 0.0) /
+               static_cast<double>(count - lag);
+    };
+    const double bound = 4.0 / std::sqrt(static_cast<double>(count));
+    const auto base = all_normals({0, Purpose::study_error, 0, 0}, count);
+    for (const std::size_t lag : {1u, 2u, 15u, 16u, 17u, 32u}) CHECK(std::fabs(correlation(base, base, lag)) < bound);
+    CHECK(std::fabs(correlation(base, all_normals({1, Purpose::study_error, 0, 0}, count), 0)) < bound);
+    CHECK(std::fabs(correlation(base, all_normals({0, Purpose::study_effect, 0, 0}, count), 0)) < bound);
+    CHECK(std::fabs(correlation(base, all_normals({0, Purpose::study_error, 1, 0}, count), 0)) < bound);
+    CHECK(std::fabs(correlation(base, all_normals({0, Purpose::study_error, 0, 1}, count), 0)) < bound);
+    std::vector<double> other(count);
+    normals({key.seed + 1}, {0, Purpose::study_error, 0, 0}, {0, nullptr, count}, other.data());
+    CHECK(std::fabs(correlation(base, other, 0)) < bound);
+}
+
+TEST_CASE("One draw from each of many keyed streams is uniform: chi-squared over 64 cells", "[random]") {
+    // 99.99 % point of chi-squared with 63 degrees of freedom: 113.0 (scipy.stats.chi2.ppf(.9999, 63) = 113.02).
+    const double critical = 113.02;
+    const auto statistic = [](const std::vector<double>& u) {
+        std::vector<double> cells(64, 0.0);
+        for (const double x : u) cells[static_cast<std::size_t>(x * 64)] += 1.0;
+        const double expected = static_cast<double>(u.size()) / 64;
+        double sum = 0.0;
+        for (const double c : cells) sum += (c - expected) * (c - expected) / expected;
+        return sum;
+    };
+    std::vector<double> over_literatures, over_studies, over_seeds;
+    for (std::uint32_t i = 0; i < 60000; ++i) {
+        over_literatures.push_back(uniform(key, {i, Purpose::writing, 0, 0}, 0));
+        over_studies.push_back(uniform(key, {0, Purpose::writing, static_cast<std::uint16_t>(i), 0}, 0));
+        over_seeds.push_back(uniform({i}, {0, Purpose::writing, 0, 0}, 0));
+    }
+    CHECK(statistic(over_literatures) < critical);
+    CHECK(statistic(over_studies) < critical);
+    CHECK(statistic(over_seeds) < critical);
+}
