@@ -7,7 +7,6 @@
 #include <vector>
 
 #include "sim/model/scenario.h"
-#include "sim/variate/alias.h"
 
 namespace lacuna {
 
@@ -31,9 +30,13 @@ struct TestTable {
     std::vector<double> variance_per_cube;  // variance / sigma^2 = variance_per_cube * (1 + c x)^3
     std::vector<std::vector<double>> cut_critical;  // [cut][row]: critical value of a p rule's step
 
+    // Sizes by the alias method (sim/variate/alias.h): each kind has `size_rows` rows from `first_row`
+    // on; of its column that stands at `row`, `keep` stays there and the rest goes to row `other`.
+    std::vector<double> keep;
+    std::vector<std::uint64_t> other;
     struct Kind {
-        std::size_t first_row = 0;
-        AliasTable sizes;  // over rows first_row, first_row + 1, ...
+        std::uint32_t first_row = 0;
+        std::uint32_t size_rows = 0;
     };
     std::vector<Kind> kinds;
 

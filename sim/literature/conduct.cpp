@@ -3,6 +3,8 @@
 #include <algorithm>
 #include <cmath>
 
+#include "sim/random/chance.h"
+
 namespace lacuna {
 
 namespace {
@@ -25,6 +27,22 @@ void draw_effects(const Sampler& sampler, bool which, StreamKey key, std::uint32
     for (std::size_t i = 0; i < scratch.chosen.size(); ++i) questions.effect[scratch.chosen[i]] = scratch.drawn[i];
 }
 
+/// Effects and truths where each kind of question has one effect.
+void fill_two_effects(const PreparedScience& science, StreamKey key, Questions& questions) {
+    double effect[2];
+    science.null_effect.draw(key, {}, Purpose::question_effect, {0, nullptr, 1}, &effect[0]);
+    science.effect.draw(key, {}, Purpose::question_effect, {0, nullptr, 1}, &effect[1]);
+    const double negligible = science.science.field.negligible;
+    const auto null_truth = static_cast<std::uint8_t>(truth_of(false, effect[0], negligible));
+    const auto real_truth = static_cast<std::uint8_t>(truth_of(true, effect[1], negligible));
+    const std::size_t count = questions.real.size();
+    const std::uint8_t* real = questions.real.data();
+    std::uint8_t* truth = questions.truth.data();
+    double* out = questions.effect.data();
+    for (std::size_t q = 0; q < count; ++q) truth[q] = real[q] ? real_truth : null_truth;
+    for (std::size_t q = 0; q < count; ++q) out[q] = effect[real[q]];
+}
+
 void draw_questions(const PreparedScience& science, StreamKey key, std::uint32_t literature, QuestionRange range,
                     ConductScratch& scratch, Questions& questions) {
     const Field& field = science.science.field;
@@ -33,18 +51,14 @@ void draw_questions(const PreparedScience& science, StreamKey key, std::uint32_t
     questions.real.resize(count);
     questions.truth.resize(count);
     questions.effect.resize(count);
-    scratch.drawn.resize(count);
-    uniforms(key, {literature, Purpose::question_truth}, {range.first, nullptr, count}, scratch.drawn.data());
-    for (std::size_t q = 0; q < count; ++q) questions.real[q] = scratch.drawn[q] < field.true_rate;
+    scratch.words.resize(count);
+    const Address address{literature, Purpose::question_truth};
+    words(key, address, {range.first, nullptr, count}, scratch.words.data());
+    const Chance chance(field.true_rate);
+    decide(key, address, count, scratch.words.data(), [&](std::size_t) -> const Chance& { return chance; },
+           [&](std::size_t q) { return range.first + q; }, questions.real.data());
     if (science.effect.constant() && science.null_effect.constant()) {
-        double effect[2];
-        science.null_effect.draw(key, {}, Purpose::question_effect, {0, nullptr, 1}, &effect[0]);
-        science.effect.draw(key, {}, Purpose::question_effect, {0, nullptr, 1}, &effect[1]);
-        const Truth truth[2] = {truth_of(false, effect[0], field.negligible), truth_of(true, effect[1], field.negligible)};
-        for (std::size_t q = 0; q < count; ++q) {
-            questions.effect[q] = effect[questions.real[q]];
-            questions.truth[q] = static_cast<std::uint8_t>(truth[questions.real[q]]);
-        }
+        fill_two_effects(science, key, questions);
         return;
     }
     draw_effects(science.effect, true, key, literature, scratch, questions);
@@ -61,11 +75,13 @@ void place_lines(const PreparedScience& science, const Roster& roster, QuestionR
     lines.first = first_line(range.first, questions, roster.lines);
     const std::size_t count = first_line(range.last, questions, roster.lines) - lines.first;
     lines.question.resize(count);
+    lines.one_each = roster.lines == questions;
     std::size_t l = 0;
-    for (std::uint64_t q = range.first; q < range.last; ++q) {
+    for (std::uint64_t q = range.first; q < range.last && !lines.one_each; ++q) {
         const std::size_t end = first_line(q + 1, questions, roster.lines) - lines.first;
         while (l < end) lines.question[l++] = static_cast<std::uint32_t>(q - range.first);
     }
+    for (; l < count; ++l) lines.question[l] = static_cast<std::uint32_t>(l);
     lines.lab.clear();
     lines.kind.clear();
     if (!roster.order || count == 0) return;
@@ -84,59 +100,85 @@ const LineRule& rule_of(const PreparedScience& science, const Lines& lines, std:
 }
 
 /// True effects of the round's studies: the question's, and the study's own deviation.
-void draw_thetas(const PreparedScience& science, StreamKey key, Address address, Entities entities,
-                 const Questions& questions, const Lines& lines, const std::uint32_t* line, ConductScratch& scratch,
-                 double* theta) {
-    for (std::size_t i = 0; i < entities.count; ++i) theta[i] = questions.effect[lines.question[line[i]]];
+void draw_thetas(const PreparedScience& science, const StudyRound& round, bool every_line, const Conducted& block,
+                 const std::uint32_t* line, ConductScratch& scratch, double* theta) {
+    const std::size_t count = round.entities.count;
+    const std::vector<double>& effect = block.questions.effect;
+    if (every_line && block.lines.one_each) {
+        std::copy(effect.begin(), effect.end(), theta);
+    } else {
+        for (std::size_t i = 0; i < count; ++i) theta[i] = effect[block.lines.question[line[i]]];
+    }
     const double sd = science.science.field.heterogeneity;
     if (sd == 0.0) return;
-    scratch.deviation.resize(entities.count);
-    address.purpose = Purpose::study_effect;
-    normals(key, address, entities, scratch.deviation.data());
-    for (std::size_t i = 0; i < entities.count; ++i) theta[i] += sd * scratch.deviation[i];
+    scratch.deviation.resize(count);
+    normals(round.key, round.address(Purpose::study_effect), round.entities, scratch.deviation.data());
+    for (std::size_t i = 0; i < count; ++i) theta[i] += sd * scratch.deviation[i];
 }
 
-/// Runs study number `round` of the lines in scratch.active and appends its columns.
-void run_round(const PreparedScience& science, StreamKey key, std::uint16_t round, ConductScratch& scratch,
+/// Room for `count` more studies from `begin` on; kernels write whole vectors, so a little beyond.
+void make_room(Studies& studies, std::size_t size) {
+    studies.line.resize(size);
+    studies.row.resize(size);
+    studies.theta.resize(size);
+    studies.statistic.resize(size);
+    studies.estimate.resize(size);
+    studies.claim.resize(size);
+}
+constexpr std::size_t room_beyond = 16;
+
+/// Lab kinds of the lines of a round; null where there is one.
+const std::uint8_t* kinds_of(const Lines& lines, bool every_line, std::size_t count, const std::uint32_t* line,
+                             ConductScratch& scratch) {
+    if (lines.kind.empty()) return nullptr;
+    if (every_line) return lines.kind.data();
+    scratch.kinds.resize(count);
+    for (std::size_t i = 0; i < count; ++i) scratch.kinds[i] = lines.kind[line[i]];
+    return scratch.kinds.data();
+}
+
+void count_claims(bool every_line, std::size_t count, const std::uint32_t* line, const std::uint8_t* claim,
+                  Lines& lines) {
+    constexpr auto positive_claim = static_cast<std::uint8_t>(Claim::positive);
+    constexpr auto reversed_claim = static_cast<std::uint8_t>(Claim::reversed);
+    std::uint16_t* studies = lines.studies.data();
+    std::uint16_t* positive = lines.positive.data();
+    std::uint16_t* reversed = lines.reversed.data();
+    const auto plus = [](std::uint16_t x, bool one) { return static_cast<std::uint16_t>(x + one); };
+    if (every_line) {  // without the indirection these loops are vectors
+        for (std::size_t i = 0; i < count; ++i) studies[i] = plus(studies[i], true);
+        for (std::size_t i = 0; i < count; ++i) positive[i] = plus(positive[i], claim[i] == positive_claim);
+        for (std::size_t i = 0; i < count; ++i) reversed[i] = plus(reversed[i], claim[i] == reversed_claim);
+        return;
+    }
+    for (std::size_t i = 0; i < count; ++i) {
+        const std::uint32_t l = line[i];
+        studies[l] = plus(studies[l], true);
+        positive[l] = plus(positive[l], claim[i] == positive_claim);
+        reversed[l] = plus(reversed[l], claim[i] == reversed_claim);
+    }
+}
+
+/// Runs study number `number` of the lines in scratch.active and appends its columns.
+void run_round(const PreparedScience& science, StreamKey key, std::uint16_t number, ConductScratch& scratch,
                Conducted& block) {
     Lines& lines = block.lines;
     Studies& studies = block.studies;
     const std::size_t begin = studies.round.back();
     const std::size_t count = scratch.active.size();
-    const std::size_t end = begin + count;
-    studies.line.resize(end);
-    studies.row.resize(end);
-    studies.theta.resize(end);
-    studies.statistic.resize(end);
-    studies.estimate.resize(end);
-    studies.claim.resize(end);
+    make_room(studies, begin + count + room_beyond);
     std::copy(scratch.active.begin(), scratch.active.end(), studies.line.begin() + static_cast<std::ptrdiff_t>(begin));
     const std::uint32_t* line = studies.line.data() + begin;
     const bool every_line = count == lines.studies.size();
-    const Entities entities{lines.first, every_line ? nullptr : line, count};
-
-    std::uint8_t* kind = nullptr;
-    std::vector<std::uint8_t> kinds;
-    if (!lines.kind.empty() && every_line) {
-        kind = lines.kind.data();
-    } else if (!lines.kind.empty()) {
-        for (std::size_t i = 0; i < count; ++i) kinds.push_back(lines.kind[line[i]]);
-        kind = kinds.data();
-    }
-    draw_sizes(key, block.literature, round, entities, science.table, kind, scratch.sampling, studies.row.data() + begin);
-    draw_thetas(science, key, {block.literature, Purpose::study_effect, round}, entities, block.questions, lines, line,
-                scratch, studies.theta.data() + begin);
-    draw_studies(key, block.literature, round, entities, science.science.design, science.table, scratch.sampling,
-                 {studies.row.data() + begin, studies.theta.data() + begin, studies.statistic.data() + begin,
-                  studies.estimate.data() + begin, studies.claim.data() + begin});
-    for (std::size_t i = 0; i < count; ++i) {
-        const std::uint8_t claim = studies.claim[begin + i];
-        const std::uint32_t l = line[i];
-        lines.studies[l] = static_cast<std::uint16_t>(lines.studies[l] + 1);
-        lines.positive[l] = static_cast<std::uint16_t>(lines.positive[l] + (claim == std::uint8_t(Claim::positive)));
-        lines.reversed[l] = static_cast<std::uint16_t>(lines.reversed[l] + (claim == std::uint8_t(Claim::reversed)));
-    }
-    studies.round.push_back(end);
+    const StudyRound round{key, block.literature, number, {lines.first, every_line ? nullptr : line, count}};
+    const StudyBatch batch{studies.row.data() + begin, studies.theta.data() + begin, studies.statistic.data() + begin,
+                           studies.estimate.data() + begin, studies.claim.data() + begin};
+    draw_sizes(round, science.table, kinds_of(lines, every_line, count, line, scratch), scratch.sampling,
+               studies.row.data() + begin);
+    draw_thetas(science, round, every_line, block, line, scratch, studies.theta.data() + begin);
+    draw_studies(round, science.science.design, science.table, scratch.sampling, batch);
+    count_claims(every_line, count, line, batch.claim, lines);
+    studies.round.push_back(begin + count);
 }
 
 /// Keeps in scratch.active the lines that go on.
@@ -171,17 +213,12 @@ void run_studies(const PreparedScience& science, StreamKey key, ConductScratch& 
     scratch.active.resize(count);
     for (std::size_t l = 0; l < count; ++l) scratch.active[l] = static_cast<std::uint32_t>(l);
     block.studies.round.assign(1, 0);
-    for (std::uint16_t round = 0; !scratch.active.empty(); ++round) {
-        run_round(science, key, round, scratch, block);
+    for (std::uint16_t number = 0; !scratch.active.empty(); ++number) {
+        run_round(science, key, number, scratch, block);
+        if (science.longest_line == 1u) break;
         keep_going(science, lines, scratch);
     }
-    const std::size_t studies = block.studies.round.back();
-    block.studies.line.resize(studies);
-    block.studies.row.resize(studies);
-    block.studies.theta.resize(studies);
-    block.studies.statistic.resize(studies);
-    block.studies.estimate.resize(studies);
-    block.studies.claim.resize(studies);
+    make_room(block.studies, block.studies.round.back());
     count_levels(science, block.studies);
 }
 

@@ -20,8 +20,10 @@ struct QuestionRange {
 struct ConductScratch {
     SamplingScratch sampling;
     std::vector<double> drawn, deviation;
+    std::vector<std::uint16_t> words;
     std::vector<std::uint32_t> chosen, active, still;
     std::vector<std::uint64_t> places;
+    std::vector<std::uint8_t> kinds;
 };
 
 /// Fills `block` with the questions of `range`, the lines that work on them, and their studies. A pure

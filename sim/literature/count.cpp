@@ -40,21 +40,27 @@ void count_questions(const PreparedRules& rules, const Conducted& block, const O
 void gather_facts(const PreparedScience& science, const Conducted& block, CountScratch& scratch) {
     const Studies& studies = block.studies;
     const std::size_t count = studies.claim.size();
-    scratch.truth.resize(count);
-    scratch.effect.resize(count);
     scratch.participants.resize(count);
-    for (std::size_t s = 0; s < count; ++s) {
-        const std::uint32_t q = block.lines.question[studies.line[s]];
-        scratch.truth[s] = block.questions.truth[q];
-        scratch.effect[s] = block.questions.effect[q];
-        scratch.participants[s] = science.table.participants[studies.row[s]];
+    for (std::size_t s = 0; s < count; ++s) scratch.participants[s] = science.table.participants[studies.row[s]];
+    StudyColumns columns{count, block.questions.truth.data(), studies.claim.data(), nullptr, studies.estimate.data(),
+                         block.questions.effect.data(), scratch.participants.data()};
+    if (!block.lines.one_each || studies.round.size() > 2) {
+        scratch.truth.resize(count);
+        scratch.effect.resize(count);
+        for (std::size_t s = 0; s < count; ++s) {
+            const std::uint32_t q = block.lines.question[studies.line[s]];
+            scratch.truth[s] = block.questions.truth[q];
+            scratch.effect[s] = block.questions.effect[q];
+        }
+        columns.truth = scratch.truth.data();
+        columns.effect = scratch.effect.data();
     }
-    scratch.kind.resize(block.lines.kind.empty() ? 0 : count);
-    for (std::size_t s = 0; s < scratch.kind.size(); ++s) scratch.kind[s] = block.lines.kind[studies.line[s]];
-    make_study_facts({count, scratch.truth.data(), studies.claim.data(),
-                      scratch.kind.empty() ? nullptr : scratch.kind.data(), studies.estimate.data(),
-                      scratch.effect.data(), scratch.participants.data()},
-                     scratch.facts);
+    if (!block.lines.kind.empty()) {
+        scratch.kind.resize(count);
+        for (std::size_t s = 0; s < count; ++s) scratch.kind[s] = block.lines.kind[studies.line[s]];
+        columns.kind = scratch.kind.data();
+    }
+    make_study_facts(columns, scratch.facts);
 }
 
 bool one_study_a_question(const PreparedScience& science, const Roster& roster) {

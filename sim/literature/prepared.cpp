@@ -21,7 +21,10 @@ PreparedScience::PreparedScience(const Science& its, const Cuts& cuts, bool line
       effect(its.field.effect),
       null_effect(its.field.null_effect),
       who_matters(its.labs.size() > 1 || lines_are_stored) {
-    for (const LabKind& kind : its.labs) lab_lines.emplace_back(kind.lines);
+    for (const LabKind& kind : its.labs) {
+        lab_lines.emplace_back(kind.lines);
+        longest_line = std::max(longest_line, kind.studies.longest());
+    }
     for (std::size_t c = 0; c < table.cut_critical.size(); ++c) {
         (c < cuts.two_sided.size() ? cuts_two : cuts_one).push_back(c);
     }

@@ -17,6 +17,7 @@ struct PreparedScience {
     Sampler effect, null_effect;
     std::vector<Sampler> lab_lines;           // per kind
     std::vector<std::size_t> cuts_two, cuts_one;  // in table.cut_critical, by sidedness
+    std::uint32_t longest_line = 0;  // studies, over the kinds
     bool who_matters;  // whether it must be known which lab runs a line: several kinds, or stored lines
 
     PreparedScience(const Science& its, const Cuts& cuts, bool lines_are_stored);

@@ -19,6 +19,7 @@ struct Questions {
 struct Lines {
     std::uint64_t first = 0;               // line number of entry 0
     std::vector<std::uint32_t> question;   // entry in Questions
+    bool one_each = false;                 // line i works on question i, for all of them
     std::vector<std::uint32_t> lab;        // lab number; empty when nobody asks
     std::vector<std::uint8_t> kind;        // lab kind; empty when there is one
     std::vector<std::uint16_t> studies;    // how many the line holds

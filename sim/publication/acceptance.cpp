@@ -15,9 +15,9 @@ double writing_chance(const Writing& writing, ManuscriptClass manuscript_class) 
 
 AcceptanceTable acceptance_table(const Acceptance& accept, const std::vector<double>& cuts) {
     if (accept.kind == Acceptance::Kind::by_class) {
-        return {accept.kind, 2, {accept.supportive, accept.mixed, accept.null}};
+        return {accept.kind, 2, {Chance(accept.supportive), Chance(accept.mixed), Chance(accept.null)}};
     }
-    AcceptanceTable table{accept.kind, accept.sides, std::vector<double>(cuts.size() + 1)};
+    AcceptanceTable table{accept.kind, accept.sides, std::vector<Chance>(cuts.size() + 1)};
     for (std::size_t level = 0; level <= cuts.size(); ++level) {
         // At this level p is below cuts[size - level] and not below the cut before it.
         std::size_t step = accept.steps.size();
@@ -26,7 +26,7 @@ AcceptanceTable acceptance_table(const Acceptance& accept, const std::vector<dou
             step = static_cast<std::size_t>(std::lower_bound(accept.steps.begin(), accept.steps.end(), bound) -
                                             accept.steps.begin());
         }
-        table.chance[level] = accept.chance[step];
+        table.chance[level] = Chance(accept.chance[step]);
     }
     return table;
 }

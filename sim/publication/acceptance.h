@@ -2,20 +2,15 @@
 // about.
 #pragma once
 
-#include <cstddef>
+#include <cstdint>
+#include <string>
 #include <vector>
 
 #include "sim/model/claim.h"
 #include "sim/model/scenario.h"
+#include "sim/random/chance.h"
 
 namespace lacuna {
-
-/// What a journal sees of a manuscript.
-struct ManuscriptFacts {
-    ManuscriptClass manuscript_class;
-    std::uint8_t level_two;  // how many of the regime set's two-sided cuts its best p is below
-    std::uint8_t level_one;  // the same for one-sided p
-};
 
 /// Chance that a manuscript is written up.
 double writing_chance(const Writing& writing, ManuscriptClass manuscript_class);
@@ -24,12 +19,7 @@ double writing_chance(const Writing& writing, ManuscriptClass manuscript_class);
 struct AcceptanceTable {
     Acceptance::Kind kind;
     int sides;
-    std::vector<double> chance;  // by class, or by level 0 .. number of cuts
-
-    double operator()(const ManuscriptFacts& facts) const {
-        if (kind == Acceptance::Kind::by_class) return chance[static_cast<std::size_t>(facts.manuscript_class)];
-        return chance[sides == 2 ? facts.level_two : facts.level_one];
-    }
+    std::vector<Chance> chance;  // by class, or by level 0 .. number of cuts
 };
 
 /// `cuts`: all cuts of the rule's sidedness that levels are counted over, ascending; they must hold the

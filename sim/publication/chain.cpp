@@ -10,6 +10,7 @@ namespace {
 
 constexpr auto unwritten = static_cast<std::uint8_t>(Status::unwritten);
 constexpr auto unpublished = static_cast<std::uint8_t>(Status::unpublished);
+static_assert(static_cast<int>(Status::published) == static_cast<int>(Status::unpublished) + 1);
 constexpr auto published = static_cast<std::uint8_t>(Status::published);
 
 /// Manuscripts begin .. begin + entities.count - 1, which share an address but for the entity.
@@ -34,16 +35,16 @@ std::vector<Segment> segments(Unit unit, const Conducted& block) {
     return all;
 }
 
-/// Uniforms of the waiting manuscripts of a segment, in the order of scratch.waiting.
-void waiting_uniforms(StreamKey key, Address address, const Segment& segment, ChainScratch& scratch,
-                      std::vector<double>& out) {
+/// Words of the waiting manuscripts of a segment, in the order of scratch.waiting.
+void waiting_words(StreamKey key, Address address, const Segment& segment, ChainScratch& scratch,
+                   std::vector<std::uint16_t>& out) {
     const std::size_t count = scratch.waiting.size();
     if (count == segment.entities.count) {
         out.resize(count);
-        uniforms(key, address, segment.entities, out.data());
-    } else if (2 * count > segment.entities.count && segment.entities.offsets == nullptr) {
-        out.resize(segment.entities.count);  // cheaper to draw all in order than half of them scattered
-        uniforms(key, address, segment.entities, out.data());
+        words(key, address, segment.entities, out.data());
+    } else if (8 * count > segment.entities.count && segment.entities.offsets == nullptr) {
+        out.resize(segment.entities.count);  // cheaper to draw all in order than an eighth of them scattered
+        words(key, address, segment.entities, out.data());
         for (std::size_t i = 0; i < count; ++i) out[i] = out[scratch.waiting[i]];
     } else {
         out.resize(count);
@@ -52,27 +53,32 @@ void waiting_uniforms(StreamKey key, Address address, const Segment& segment, Ch
             const std::uint32_t w = scratch.waiting[i];
             scratch.offsets[i] = segment.entities.offsets ? segment.entities.offsets[w] : w;
         }
-        uniforms(key, address, {segment.entities.first, scratch.offsets.data(), count}, out.data());
+        words(key, address, {segment.entities.first, scratch.offsets.data(), count}, out.data());
     }
 }
 
+std::uint64_t entity_of(const Segment& segment, std::uint32_t manuscript) {
+    return segment.entities.first + (segment.entities.offsets ? segment.entities.offsets[manuscript] : manuscript);
+}
+
+/// Leaves in scratch.waiting the manuscripts that are written up.
 void write_up(StreamKey key, Address address, const PreparedRules& rules, const Segment& segment,
               ChainScratch& scratch, Outcome& outcome) {
     const std::size_t count = segment.entities.count;
     scratch.waiting.resize(count);
-    const double* w = rules.writing;
-    if (w[0] == 1.0 && w[1] == 1.0 && w[2] == 1.0) {
-        for (std::size_t i = 0; i < count; ++i) scratch.waiting[i] = static_cast<std::uint32_t>(i);
-        return;
-    }
-    scratch.uniform.resize(count);
+    for (std::size_t i = 0; i < count; ++i) scratch.waiting[i] = static_cast<std::uint32_t>(i);
+    const Chance* chance = rules.writing;
+    if (chance[0].p() == 1.0 && chance[1].p() == 1.0 && chance[2].p() == 1.0) return;
     address.purpose = Purpose::writing;
-    uniforms(key, address, segment.entities, scratch.uniform.data());
+    waiting_words(key, address, segment, scratch, scratch.words);
     const std::uint8_t* classes = outcome.manuscript_class.data() + segment.begin;
+    scratch.happened.resize(count);
+    decide(key, address, count, scratch.words.data(), [&](std::size_t i) -> const Chance& { return chance[classes[i]]; },
+           [&](std::size_t i) { return entity_of(segment, static_cast<std::uint32_t>(i)); }, scratch.happened.data());
     std::size_t written = 0;
     for (std::size_t i = 0; i < count; ++i) {
         scratch.waiting[written] = static_cast<std::uint32_t>(i);
-        written += scratch.uniform[i] < w[classes[i]];
+        written += scratch.happened[i];
     }
     scratch.waiting.resize(written);
 }
@@ -84,30 +90,56 @@ const std::uint8_t* seen(const AcceptanceTable& accept, const Segment& segment, 
     return (accept.sides == 2 ? scratch.level_two : scratch.level_one).data() + segment.begin;
 }
 
-void submit(StreamKey key, Address address, const PreparedRules& rules, std::size_t j, const Segment& segment,
-            ChainScratch& scratch, Outcome& outcome) {
-    const PreparedRules::PreparedJournal& journal = rules.journals[j];
+/// scratch.happened[i] = whether journal j accepts waiting manuscript i.
+void judge(StreamKey key, Address address, const PreparedRules::PreparedJournal& journal, const Segment& segment,
+           ChainScratch& scratch, const Outcome& outcome) {
+    const std::size_t count = scratch.waiting.size();
+    const std::uint32_t* waiting = scratch.waiting.data();
+    const auto entity = [&](std::size_t i) { return entity_of(segment, waiting[i]); };
+    const std::uint8_t* facts = seen(journal.accept, segment, scratch, outcome);
+    const Chance* chances = journal.accept.chance.data();
+    scratch.happened.resize(count);
     address.index = journal.index;
     address.purpose = Purpose::acceptance;
-    waiting_uniforms(key, address, segment, scratch, scratch.uniform);
-    const bool some_blind = journal.results_blind > 0.0;
-    if (some_blind) {
-        address.purpose = Purpose::results_blind;
-        waiting_uniforms(key, address, segment, scratch, scratch.blind);
+    waiting_words(key, address, segment, scratch, scratch.words);
+    if (journal.results_blind.p() == 0.0) {
+        decide(key, address, count, scratch.words.data(),
+               [&](std::size_t i) -> const Chance& { return chances[facts[waiting[i]]]; }, entity,
+               scratch.happened.data());
+        return;
     }
-    const std::uint8_t* facts = seen(journal.accept, segment, scratch, outcome);
-    const double* chance = journal.accept.chance.data();
+    Address blind_address = address;
+    blind_address.purpose = Purpose::results_blind;
+    waiting_words(key, blind_address, segment, scratch, scratch.blind_words);
+    scratch.blind.resize(count);
+    decide(key, blind_address, count, scratch.blind_words.data(),
+           [&](std::size_t) -> const Chance& { return journal.results_blind; }, entity, scratch.blind.data());
+    decide(key, address, count, scratch.words.data(),
+           [&](std::size_t i) -> const Chance& {
+               return scratch.blind[i] ? journal.results_blind_chance : chances[facts[waiting[i]]];
+           },
+           entity, scratch.happened.data());
+}
+
+/// The waiting manuscripts of a segment at journal j; those it rejects go on waiting.
+void submit(StreamKey key, Address address, const PreparedRules& rules, std::size_t j, const Segment& segment,
+            ChainScratch& scratch, Outcome& outcome) {
+    judge(key, address, rules.journals[j], segment, scratch, outcome);
+    const std::uint8_t* accepted = scratch.happened.data();
+    std::uint32_t* waiting = scratch.waiting.data();
+    std::uint8_t* status = outcome.manuscript_status.data() + segment.begin;
+    std::uint8_t* published_by = outcome.journal.data() + segment.begin;
+    std::uint8_t* attempts = outcome.attempts.data() + segment.begin;
+    const auto number = static_cast<std::uint8_t>(j + 1);
+    const std::size_t count = scratch.waiting.size();
     std::size_t rejected = 0;
-    for (std::size_t i = 0; i < scratch.waiting.size(); ++i) {
-        const std::uint32_t m = scratch.waiting[i];
-        const bool blind = some_blind && scratch.blind[i] < journal.results_blind;
-        const bool accepted = scratch.uniform[i] < (blind ? journal.results_blind_chance : chance[facts[m]]);
-        const std::size_t at = segment.begin + m;
-        outcome.manuscript_status[at] = accepted ? published : unpublished;
-        outcome.journal[at] = accepted ? static_cast<std::uint8_t>(j + 1) : std::uint8_t{0};
-        outcome.attempts[at] = static_cast<std::uint8_t>(j + 1);
-        scratch.waiting[rejected] = m;
-        rejected += !accepted;
+    for (std::size_t i = 0; i < count; ++i) {
+        const std::uint32_t m = waiting[i];
+        status[m] = static_cast<std::uint8_t>(unpublished + accepted[i]);
+        published_by[m] = static_cast<std::uint8_t>(number * accepted[i]);
+        attempts[m] = number;
+        waiting[rejected] = m;
+        rejected += 1u - accepted[i];
     }
     scratch.waiting.resize(rejected);
 }
@@ -134,7 +166,7 @@ Cuts collect_cuts(const std::vector<const Rules*>& rules) {
 PreparedRules prepare(const Rules& rules, Findings findings, const Cuts& cuts) {
     PreparedRules prepared{rules.writing.unit,
                            findings,
-                           {rules.writing.supportive, rules.writing.mixed, rules.writing.null},
+                           {Chance(rules.writing.supportive), Chance(rules.writing.mixed), Chance(rules.writing.null)},
                            {},
                            rules.journals.empty()};
     const std::size_t tried = std::min<std::size_t>(rules.submission.attempts, rules.journals.size());
@@ -143,7 +175,7 @@ PreparedRules prepare(const Rules& rules, Findings findings, const Cuts& cuts) {
         prepared.journals.push_back(
             {journal_index(journal.name),
              acceptance_table(journal.accept, journal.accept.sides == 2 ? cuts.two_sided : cuts.one_sided),
-             journal.results_blind, journal.results_blind_chance});
+             Chance(journal.results_blind), Chance(journal.results_blind_chance)});
     }
     return prepared;
 }

@@ -22,11 +22,11 @@ struct PreparedRules {
     struct PreparedJournal {
         std::uint32_t index;  // of its streams
         AcceptanceTable accept;
-        double results_blind, results_blind_chance;
+        Chance results_blind, results_blind_chance;
     };
     Unit unit;
     Findings findings;
-    double writing[3];  // by class
+    Chance writing[3];  // by class
     std::vector<PreparedJournal> journals;  // as many as are tried at most
     bool no_journal;
 };
@@ -34,9 +34,9 @@ PreparedRules prepare(const Rules& rules, Findings findings, const Cuts& cuts);
 
 /// Scratch columns, reused from block to block.
 struct ChainScratch {
-    std::vector<double> uniform, blind;
+    std::vector<std::uint16_t> words, blind_words;
     std::vector<std::uint32_t> waiting, offsets;
-    std::vector<std::uint8_t> level_two, level_one;
+    std::vector<std::uint8_t> level_two, level_one, happened, blind;
 };
 
 /// Takes every manuscript of the block through the chain and fills `outcome`.

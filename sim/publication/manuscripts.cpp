@@ -41,12 +41,17 @@ ManuscriptClass class_of_line(std::uint32_t studies, std::uint32_t positive, std
 void classify(const PreparedRules& rules, const Conducted& block, Outcome& outcome) {
     std::vector<std::uint8_t>& classes = outcome.manuscript_class;
     if (rules.unit == Unit::study) {
-        std::uint8_t by_claim[4];
-        for (std::size_t c = 0; c < 4; ++c) {
-            by_claim[c] = static_cast<std::uint8_t>(class_of_study(Claim(c), rules.findings));
+        const std::size_t count = block.studies.claim.size();
+        classes.resize(count);
+        const std::uint8_t* claim = block.studies.claim.data();
+        std::uint8_t* out = classes.data();
+        constexpr auto supportive = static_cast<std::uint8_t>(ManuscriptClass::supportive);
+        constexpr auto null = static_cast<std::uint8_t>(ManuscriptClass::null);
+        const auto other = static_cast<std::uint8_t>(rules.findings == Findings::either ? Claim::reversed : Claim::positive);
+        for (std::size_t s = 0; s < count; ++s) {
+            const bool finds = claim[s] == static_cast<std::uint8_t>(Claim::positive) || claim[s] == other;
+            out[s] = finds ? supportive : null;
         }
-        classes.resize(block.studies.claim.size());
-        for (std::size_t s = 0; s < classes.size(); ++s) classes[s] = by_claim[block.studies.claim[s]];
         return;
     }
     const Lines& lines = block.lines;

@@ -1,4 +1,4 @@
-// Batches of uniforms and normals, one per entity, by vector kernels chosen at run time.
+// Batches of uniforms, normals and short words, one per entity, by vector kernels chosen at run time.
 //
 // One Philox block serves two entities. In every group of 32 entities the first 16 take the first
 // half of blocks 0..15 and the others the second half, so a vector of blocks is stored without
@@ -30,6 +30,20 @@ void normals(StreamKey key, Address address, Entities entities, double* out);
 
 /// The uniform of a single entity: the same bits as the batch.
 double uniform(StreamKey key, Address address, std::uint64_t entity);
+
+/// out[i] = the 16-bit word of entity i at `address`: the leading bits of its uniform, for decisions that
+/// seldom need more. One Philox block serves eight entities:
+///   entity e: block (e / 128) * 16 + e % 16, 32-bit word (e / 16) % 4, its low half for (e / 64) % 2 = 0.
+/// An address serves words of one width, uniforms or normals, never two of them.
+void words(StreamKey key, Address address, Entities entities, std::uint16_t* out);
+
+/// The same with 32 bits, four entities a block:
+///   entity e: block (e / 64) * 16 + e % 16, word (e / 16) % 4.
+void words(StreamKey key, Address address, Entities entities, std::uint32_t* out);
+
+/// The uniform on (0, 1) whose leading bits are `word` (of `bits` bits): asked for when the word alone
+/// does not decide.
+double refined(StreamKey key, Address address, std::uint64_t entity, std::uint32_t word, int bits);
 
 /// The vector instruction set in use, e.g. "AVX3".
 std::string vector_target();

@@ -15,22 +15,22 @@ namespace lacuna {
 
 /// What a draw is for. Append only: the numbers are part of every result ever published.
 enum class Purpose : std::uint8_t {
-    question_truth = 0,      // is the question real
-    question_effect = 1,     // its effect
-    lab_kind = 2,            // the kind of a lab
-    lab_lines = 3,           // how many lines it runs
-    line_order = 4,          // which lab works on which line
-    study_size = 5,          // n
-    study_effect = 6,        // the study's true effect around the question's
-    study_error = 7,         // sampling error of the estimate
-    study_variance = 8,      // normal behind the chi-squared of the variance
-    study_variance_test = 9, // uniform of its acceptance test
-    study_variance_again = 10,  // draws after a rejection
-    writing = 11,            // is the manuscript written up
-    results_blind = 12,      // is it judged before results are seen (index: journal)
-    acceptance = 13,         // is it accepted (index: journal)
-    question_effect_again = 14,  // effect draws after one fell outside the truncation bounds
-    lab_lines_again = 15         // the same for lines
+    question_truth = 0,         // is the question real
+    question_effect = 1,        // its effect
+    question_effect_again = 2,  // after a draw fell outside the truncation bounds
+    lab_kind = 3,               // the kind of a lab
+    lab_lines = 4,              // how many lines it runs
+    lab_lines_again = 5,        // after a draw fell outside the truncation bounds
+    line_order = 6,             // which lab works on which line
+    study_size = 7,             // n
+    study_effect = 8,           // the study's true effect around the question's
+    study_data = 9,             // a pair of normals: sampling error, and the root of the chi-squared
+    study_variance_test = 10,   // further bits of that chi-squared's acceptance test
+    study_variance_again = 11,  // draws after a rejection
+    writing = 12,               // is the manuscript written up
+    results_blind = 13,         // is it judged before results are seen (index: journal)
+    acceptance = 14,            // is it accepted (index: journal)
+    refinement = 15             // further bits of a 32-bit word that decided nothing
 };
 
 /// The key of all streams of a run.

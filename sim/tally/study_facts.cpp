@@ -37,7 +37,8 @@ std::size_t FactVectors(const StudyColumns& in, StudyFacts& out) {
         const auto bin = hn::IfThenElse(negative, hn::Sub(middle, step), hn::Add(hn::Add(middle, step), hn::Set(i, 1)));
         hn::StoreU(hn::TruncateTo(narrow, hn::BitCast(u, bin)), narrow, out.bin.data() + at);
     }
-    for (std::size_t s = 0; s < at; ++s) out.bin[s] = static_cast<std::uint16_t>(in.truth[s] == 0 ? 0 : out.bin[s]);
+    std::uint16_t* kept = out.bin.data();
+    for (std::size_t s = 0; s < at; ++s) kept[s] = static_cast<std::uint16_t>(in.truth[s] == 0 ? 0 : kept[s]);
     return at;
 }
 
@@ -87,11 +88,10 @@ void make_study_facts(const StudyColumns& in, StudyFacts& out) {
     out.bin.resize(in.count);
     out.estimate.resize(in.count);
     out.effect.resize(in.count);
-    out.participants.assign(in.participants, in.participants + in.count);
-    for (std::size_t s = 0; s < in.count; ++s) {
-        const unsigned kind = in.kind ? in.kind[s] : 0u;
-        out.cell[s] = static_cast<std::uint16_t>((kind * 3u + in.truth[s]) * 4u + in.claim[s]);
-    }
+    out.participants = in.participants;
+    std::uint16_t* cell = out.cell.data();
+    for (std::size_t s = 0; s < in.count; ++s) cell[s] = static_cast<std::uint16_t>(in.truth[s] * 4u + in.claim[s]);
+    for (std::size_t s = 0; in.kind && s < in.count; ++s) cell[s] = static_cast<std::uint16_t>(cell[s] + in.kind[s] * 12u);
     for (std::size_t s = HWY_DYNAMIC_DISPATCH(FactVectors)(in, out); s < in.count; ++s) {
         out.effect[s] = std::fabs(in.effect[s]);
         out.estimate[s] = std::signbit(in.effect[s]) ? -in.estimate[s] : in.estimate[s];

@@ -37,7 +37,7 @@ struct StudyFacts {
     std::vector<std::uint16_t> bin;    // of the ratio
     std::vector<double> estimate;      // oriented by the sign of the effect
     std::vector<double> effect;        // absolute
-    std::vector<double> participants;
+    const double* participants = nullptr;  // the column given
 };
 
 /// Fills `facts` from columns.

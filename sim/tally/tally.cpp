@@ -34,18 +34,23 @@ void Tally::clear() {
 void Tally::add_studies(const StudyFacts& facts, const std::uint8_t* status) {
     const std::size_t count = facts.cell.size();
     const std::size_t stride = statuses * cells_;
-    std::uint32_t found[4];
+    std::size_t found[4];
     for (std::size_t claim = 0; claim < 4; ++claim) found[claim] = finds(claim);
+    const std::uint16_t* cell = facts.cell.data();
+    const std::uint16_t* bin = facts.bin.data();
+    const double* estimate = facts.estimate.data();
+    const double* effect = facts.effect.data();
+    Cell* sums = sums_.data();
+    std::uint32_t* ratios = ratios_.data();
     for (std::size_t s = 0; s < count; ++s) {
-        const std::size_t at = facts.cell[s];
-        Cell& cell = sums_[(s % lanes) * stride + status[s] * cells_ + at];
-        const double estimate = facts.estimate[s];
-        cell.count += 1.0;
-        cell.estimate += estimate;
-        cell.abs_estimate += std::fabs(estimate);
-        cell.effect += facts.effect[s];
-        cell.participants += facts.participants[s];
-        ++ratios_[(status[s] * 2u + found[at % 4]) * ratio_bins::count + facts.bin[s]];
+        const std::size_t at = cell[s];
+        Cell& sum = sums[(s % lanes) * stride + status[s] * cells_ + at];
+        sum.count += 1.0;
+        sum.estimate += estimate[s];
+        sum.abs_estimate += std::fabs(estimate[s]);
+        sum.effect += effect[s];
+        sum.participants += facts.participants[s];
+        ++ratios[(status[s] * 2u + found[at % 4]) * ratio_bins::count + bin[s]];
     }
 }
 

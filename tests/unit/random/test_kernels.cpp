@@ -47,7 +47,7 @@ TEST_CASE("Uniform kernels give the bits of the scalar stream, from any start an
 }
 
 TEST_CASE("Normal kernels agree with Box-Muller in long double on every vector target", "[random]") {
-    const Address address{0, Purpose::study_error, 0, 0};
+    const Address address{0, Purpose::study_data, 0, 0};
     for (const std::int64_t target : hwy::SupportedAndGeneratedTargets()) {
         hwy::SetSupportedTargetsForTest(target);
         INFO(vector_target());
@@ -68,7 +68,7 @@ TEST_CASE("Normal kernels agree with Box-Muller in long double on every vector t
 
 TEST_CASE("Normals and uniforms have their distributions (Kolmogorov, moments, 4 standard errors)", "[random]") {
     const std::size_t count = 1u << 20;
-    std::vector<double> z = all_normals({0, Purpose::study_error, 0, 0}, count);
+    std::vector<double> z = all_normals({0, Purpose::study_data, 0, 0}, count);
     double m1 = 0, m2 = 0, m3 = 0, m4 = 0;
     for (const double x : z) {
         m1 += x;
@@ -100,14 +100,14 @@ TEST_CASE("Neighbouring entities, studies, purposes, literatures and seeds are u
                static_cast<double>(count - lag);
     };
     const double bound = 4.0 / std::sqrt(static_cast<double>(count));
-    const auto base = all_normals({0, Purpose::study_error, 0, 0}, count);
+    const auto base = all_normals({0, Purpose::study_data, 0, 0}, count);
     for (const std::size_t lag : {1u, 2u, 15u, 16u, 17u, 32u}) CHECK(std::fabs(correlation(base, base, lag)) < bound);
-    CHECK(std::fabs(correlation(base, all_normals({1, Purpose::study_error, 0, 0}, count), 0)) < bound);
+    CHECK(std::fabs(correlation(base, all_normals({1, Purpose::study_data, 0, 0}, count), 0)) < bound);
     CHECK(std::fabs(correlation(base, all_normals({0, Purpose::study_effect, 0, 0}, count), 0)) < bound);
-    CHECK(std::fabs(correlation(base, all_normals({0, Purpose::study_error, 1, 0}, count), 0)) < bound);
-    CHECK(std::fabs(correlation(base, all_normals({0, Purpose::study_error, 0, 1}, count), 0)) < bound);
+    CHECK(std::fabs(correlation(base, all_normals({0, Purpose::study_data, 1, 0}, count), 0)) < bound);
+    CHECK(std::fabs(correlation(base, all_normals({0, Purpose::study_data, 0, 1}, count), 0)) < bound);
     std::vector<double> other(count);
-    normals({key.seed + 1}, {0, Purpose::study_error, 0, 0}, {0, nullptr, count}, other.data());
+    normals({key.seed + 1}, {0, Purpose::study_data, 0, 0}, {0, nullptr, count}, other.data());
     CHECK(std::fabs(correlation(base, other, 0)) < bound);
 }
 
