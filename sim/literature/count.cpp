@@ -20,18 +20,19 @@ void count_manuscripts(const PreparedRules& rules, const Conducted& block, const
 void count_questions(const PreparedRules& rules, const Conducted& block, const Outcome& outcome,
                      CountScratch& scratch, Tally& tally) {
     const std::size_t questions = block.questions.truth.size();
-    for (auto& counts : scratch.in_scope) counts.assign(questions, {});
+    scratch.questions.assign(questions, {});
+    const std::uint32_t* question = block.lines.question.data();
+    const std::uint32_t* line = block.studies.line.data();
+    std::uint32_t finding[4];
+    for (std::size_t claim = 0; claim < 4; ++claim) finding[claim] = is_finding(Claim(claim), rules.findings);
     for (std::size_t s = 0; s < outcome.status.size(); ++s) {
-        const std::uint32_t q = block.lines.question[block.studies.line[s]];
-        const std::uint32_t finding = is_finding(Claim(block.studies.claim[s]), rules.findings);
-        for (std::size_t scope = 0; scope <= outcome.status[s]; ++scope) {
-            ++scratch.in_scope[scope][q].studies;
-            scratch.in_scope[scope][q].findings += finding;
-        }
+        QuestionCount& its = scratch.questions[question[line[s]]];
+        ++its.studies[outcome.status[s]];
+        its.findings[outcome.status[s]] += finding[block.studies.claim[s]];
     }
     for (std::size_t q = 0; q < questions; ++q) {
         const bool real = block.questions.truth[q] != static_cast<std::uint8_t>(Truth::null);
-        for (std::size_t scope = 0; scope < 3; ++scope) tally.add_question(real, Scope(scope), scratch.in_scope[scope][q]);
+        tally.add_question(real, scratch.questions[q]);
     }
 }
 
@@ -41,7 +42,9 @@ void gather_facts(const PreparedScience& science, const Conducted& block, CountS
     const Studies& studies = block.studies;
     const std::size_t count = studies.claim.size();
     scratch.participants.resize(count);
-    for (std::size_t s = 0; s < count; ++s) scratch.participants[s] = science.table.participants[studies.row[s]];
+    for (std::size_t s = 0; s < count; ++s) {
+        scratch.participants[s] = science.table.n1[studies.row[s]] + science.table.n2[studies.row[s]];
+    }
     StudyColumns columns{count, block.questions.truth.data(), studies.claim.data(), nullptr, studies.estimate.data(),
                          block.questions.effect.data(), scratch.participants.data()};
     if (!block.lines.one_each || studies.round.size() > 2) {

@@ -14,8 +14,9 @@ namespace lacuna {
 struct CountScratch {
     StudyFacts facts;
     std::vector<std::uint8_t> truth, kind;
-    std::vector<double> effect, participants;
-    std::vector<QuestionCount> in_scope[3];
+    std::vector<double> effect;
+    std::vector<std::uint32_t> participants;
+    std::vector<QuestionCount> questions;
 };
 
 /// Study facts of the block, once for all regimes of its science.

@@ -57,9 +57,11 @@ struct Node {
 };
 
 /// Nodes and weights (summing to 1) such that sums over them integrate smooth functions against the
-/// distribution: exact for fixed and discrete, Gauss-Legendre on pieces of the quantile range
-/// otherwise (about `count` nodes).
-std::vector<Node> quadrature(const Distribution& distribution, int count = 200);
+/// distribution: exact for fixed, discrete and Poisson; otherwise Gauss-Legendre pieces in the normal
+/// score of x (about `count` nodes when unbounded, fewer when truncated). With `clamp` the atoms at the
+/// bounds are nodes. `breaks`: points where the integrand jumps or bends; no piece runs across one.
+std::vector<Node> quadrature(const Distribution& distribution, int count = 200,
+                             const std::vector<double>& breaks = {});
 
 /// P(round(X) = n) for every n with positive chance, `down` meaning floor instead of nearest
 /// (halves up). Support is cut where the tail beyond holds less than 2^-60. Throws InputError when

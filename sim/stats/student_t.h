@@ -5,14 +5,21 @@
 
 namespace lacuna {
 
-/// Upper critical value: P(T > c) = tail for the central t. `df` = infinity gives the normal's.
+/// Upper critical value: P(T > c) = tail for the central t. `df` = infinity gives the normal's. A tail of
+/// 0 or 1 gives infinity or its negative.
 double t_critical(double df, double tail);
 
-/// P(T > c) and P(T <= c) for the noncentral t; df may be infinity. Absolute error <= 1e-12.
+/// J(df) = Gamma(df / 2) / (sqrt(df / 2) Gamma((df - 1) / 2)), so that J E[T] is the noncentrality: the
+/// exact small-sample correction (Hedges 1981, Journal of Educational Statistics 6:107). df > 1; 1 for
+/// infinite df.
+double small_sample_correction(double df);
+
+/// P(T > c) and P(T <= c) for the noncentral t; df may be infinity; a whole number
+/// where it is small (a fractional power at zero would spoil the quadrature). Absolute error <= 1e-12.
 double noncentral_t_upper(double c, double df, double noncentrality);
 double noncentral_t_lower(double c, double df, double noncentrality);
 
-/// Chance and first absolute-free moment of T over an interval.
+/// Chance and partial mean of T over an interval.
 struct TruncatedT {
     double chance;  // P(a < T <= b)
     double first;   // E[T; a < T <= b], the partial mean (not divided by the chance)

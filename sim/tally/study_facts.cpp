@@ -11,8 +11,8 @@ HWY_BEFORE_NAMESPACE();
 namespace lacuna::HWY_NAMESPACE {
 namespace hn = hwy::HWY_NAMESPACE;
 
-/// Orients estimates, takes absolute effects, and bins their ratio; whole vectors only.
-std::size_t FactVectors(const StudyColumns& in, StudyFacts& out) {
+/// Orients estimates, takes absolute effects, and bins their ratio, in place; whole vectors only.
+std::size_t RatioVectors(StudyFacts& facts) {
     const hn::ScalableTag<double> f;
     const hn::RebindToSigned<decltype(f)> i;
     const hn::RebindToUnsigned<decltype(i)> u;
@@ -22,23 +22,22 @@ std::size_t FactVectors(const StudyColumns& in, StudyFacts& out) {
     const auto last = hn::Set(i, static_cast<std::int64_t>(ratio_bins::per_sign - 1));
     const auto middle = hn::Set(i, static_cast<std::int64_t>(ratio_bins::per_sign));
     std::size_t at = 0;
-    for (; at + lanes <= in.count; at += lanes) {
-        const auto effect = hn::LoadU(f, in.effect + at);
-        const auto sign = hn::And(effect, hn::SignBit(f));
-        const auto magnitude = hn::Abs(effect);
-        const auto estimate = hn::Xor(hn::LoadU(f, in.estimate + at), sign);
-        hn::StoreU(estimate, f, out.estimate.data() + at);
-        hn::StoreU(magnitude, f, out.effect.data() + at);
+    for (; at + lanes <= facts.real.size(); at += lanes) {
+        const auto signed_effect = hn::LoadU(f, facts.effect.data() + at);
+        const auto sign = hn::And(signed_effect, hn::SignBit(f));
+        const auto effect = hn::Abs(signed_effect);
+        const auto estimate = hn::Xor(hn::LoadU(f, facts.estimate.data() + at), sign);
+        hn::StoreU(estimate, f, facts.estimate.data() + at);
+        hn::StoreU(effect, f, facts.effect.data() + at);
         // Exponent and leading six bits of the mantissa, as one integer: the bin within a sign.
-        const auto ratio = hn::Div(estimate, magnitude);
+        const auto ratio = hn::Div(estimate, effect);
         const auto bits = hn::ShiftRight<46>(hn::BitCast(i, hn::Abs(ratio)));
         const auto step = hn::Min(hn::Max(hn::Sub(bits, first), hn::Zero(i)), last);
         const auto negative = hn::RebindMask(i, hn::Lt(ratio, hn::Zero(f)));
-        const auto bin = hn::IfThenElse(negative, hn::Sub(middle, step), hn::Add(hn::Add(middle, step), hn::Set(i, 1)));
-        hn::StoreU(hn::TruncateTo(narrow, hn::BitCast(u, bin)), narrow, out.bin.data() + at);
+        const auto below = hn::Sub(hn::Sub(middle, step), hn::Set(i, 1));
+        const auto bin = hn::IfThenElse(negative, below, hn::Add(middle, step));
+        hn::StoreU(hn::TruncateTo(narrow, hn::BitCast(u, bin)), narrow, facts.bin.data() + at);
     }
-    std::uint16_t* kept = out.bin.data();
-    for (std::size_t s = 0; s < at; ++s) kept[s] = static_cast<std::uint16_t>(in.truth[s] == 0 ? 0 : kept[s]);
     return at;
 }
 
@@ -48,7 +47,7 @@ HWY_AFTER_NAMESPACE();
 #if HWY_ONCE
 namespace lacuna {
 
-HWY_EXPORT(FactVectors);
+HWY_EXPORT(RatioVectors);
 
 namespace ratio_bins {
 
@@ -58,7 +57,7 @@ double lower_edge(std::size_t bin) {
         const double mantissa = 1.0 + static_cast<double>(step % per_octave) / static_cast<double>(per_octave);
         return std::ldexp(mantissa, lowest_exponent + static_cast<int>(step / per_octave));
     };
-    return bin <= per_sign ? -edge(per_sign + 1 - bin) : edge(bin - per_sign - 1);
+    return bin < per_sign ? -edge(per_sign - bin) : edge(bin - per_sign);
 }
 
 }  // namespace ratio_bins
@@ -66,36 +65,51 @@ double lower_edge(std::size_t bin) {
 namespace {
 
 /// The same as the vectors do, for one study.
-std::uint16_t bin_of(std::uint8_t truth, double estimate, double effect) {
-    if (truth == 0) return 0;
-    const double ratio = estimate / effect;
-    int exponent = 0;
-    const double mantissa = 2.0 * std::frexp(std::fabs(ratio), &exponent);
+std::uint16_t bin_of(double ratio) {
     double step = 0.0;
     if (ratio != 0.0) {
+        int exponent = 0;
+        const double mantissa = 2.0 * std::frexp(std::fabs(ratio), &exponent);
         step = (exponent - 1 - ratio_bins::lowest_exponent) * static_cast<double>(ratio_bins::per_octave) +
                std::floor((mantissa - 1.0) * static_cast<double>(ratio_bins::per_octave));
     }
     const double top = static_cast<double>(ratio_bins::per_sign - 1);
     const auto within = static_cast<std::size_t>(std::fmin(std::fmax(step, 0.0), top));
-    return static_cast<std::uint16_t>(ratio < 0.0 ? ratio_bins::per_sign - within : ratio_bins::per_sign + 1 + within);
+    return static_cast<std::uint16_t>(ratio < 0.0 ? ratio_bins::per_sign - 1 - within : ratio_bins::per_sign + within);
+}
+
+void list_real(const StudyColumns& in, std::vector<std::uint32_t>& real) {
+    real.resize(in.count + 1);
+    std::uint32_t* out = real.data();
+    std::size_t found = 0;
+    for (std::size_t s = 0; s < in.count; ++s) {
+        out[found] = static_cast<std::uint32_t>(s);
+        found += in.truth[s] != 0;
+    }
+    real.resize(found);
 }
 
 }  // namespace
 
 void make_study_facts(const StudyColumns& in, StudyFacts& out) {
     out.cell.resize(in.count);
-    out.bin.resize(in.count);
-    out.estimate.resize(in.count);
-    out.effect.resize(in.count);
     out.participants = in.participants;
     std::uint16_t* cell = out.cell.data();
     for (std::size_t s = 0; s < in.count; ++s) cell[s] = static_cast<std::uint16_t>(in.truth[s] * 4u + in.claim[s]);
     for (std::size_t s = 0; in.kind && s < in.count; ++s) cell[s] = static_cast<std::uint16_t>(cell[s] + in.kind[s] * 12u);
-    for (std::size_t s = HWY_DYNAMIC_DISPATCH(FactVectors)(in, out); s < in.count; ++s) {
-        out.effect[s] = std::fabs(in.effect[s]);
-        out.estimate[s] = std::signbit(in.effect[s]) ? -in.estimate[s] : in.estimate[s];
-        out.bin[s] = bin_of(in.truth[s], out.estimate[s], out.effect[s]);
+    list_real(in, out.real);
+    const std::size_t real = out.real.size();
+    out.estimate.resize(real);
+    out.effect.resize(real);
+    out.bin.resize(real);
+    for (std::size_t k = 0; k < real; ++k) {
+        out.estimate[k] = in.estimate[out.real[k]];
+        out.effect[k] = in.effect[out.real[k]];
+    }
+    for (std::size_t k = HWY_DYNAMIC_DISPATCH(RatioVectors)(out); k < real; ++k) {
+        if (std::signbit(out.effect[k])) out.estimate[k] = -out.estimate[k];
+        out.effect[k] = std::fabs(out.effect[k]);
+        out.bin[k] = bin_of(out.estimate[k] / out.effect[k]);
     }
 }
 

@@ -8,14 +8,14 @@
 namespace lacuna {
 
 /// Bins for ratios (oriented estimate / |effect|): 64 per octave of the absolute value between 2^-7
-/// and 2^12, both signs, ordered; each about 1 % wide. Bin 0 takes what has no ratio (null questions).
+/// and 2^12, both signs, ordered; each about 1 % wide.
 namespace ratio_bins {
 inline constexpr std::size_t per_octave = 64;
 inline constexpr int lowest_exponent = -7;
 inline constexpr int octaves = 19;
 inline constexpr std::size_t per_sign = per_octave * octaves;
-inline constexpr std::size_t count = 1 + 2 * per_sign;
-/// Lower edge of bin b, 1 <= b <= count (count: upper edge of the last). The outermost bins are open;
+inline constexpr std::size_t count = 2 * per_sign;
+/// Lower edge of bin b, 0 <= b <= count (count: upper edge of the last). The outermost bins are open;
 /// the two around zero reach to zero.
 double lower_edge(std::size_t bin);
 }  // namespace ratio_bins
@@ -29,15 +29,18 @@ struct StudyColumns {
     const std::uint8_t* kind;
     const double* estimate;
     const double* effect;
-    const double* participants;
+    const std::uint32_t* participants;
 };
 
 struct StudyFacts {
-    std::vector<std::uint16_t> cell;   // (kind * 3 + truth) * 4 + claim
-    std::vector<std::uint16_t> bin;    // of the ratio
-    std::vector<double> estimate;      // oriented by the sign of the effect
-    std::vector<double> effect;        // absolute
-    const double* participants = nullptr;  // the column given
+    // Of every study.
+    std::vector<std::uint16_t> cell;        // (kind * 3 + truth) * 4 + claim
+    const std::uint32_t* participants = nullptr;  // the column given
+    // Of the studies of real questions, which alone have effects to compare with.
+    std::vector<std::uint32_t> real;        // their entries
+    std::vector<double> estimate;           // oriented by the sign of the effect
+    std::vector<double> effect;             // absolute
+    std::vector<std::uint16_t> bin;         // of the ratio estimate / effect
 };
 
 /// Fills `facts` from columns.

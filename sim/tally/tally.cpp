@@ -21,6 +21,7 @@ Tally::Tally(std::size_t kinds, Findings findings)
       cells_(kinds * 12),
       findings_(findings),
       sums_(lanes * statuses * cells_),
+      packed_(sums_.size()),
       ratios_(statuses * 2 * ratio_bins::count) {}
 
 void Tally::clear() {
@@ -32,33 +33,61 @@ void Tally::clear() {
 }
 
 void Tally::add_studies(const StudyFacts& facts, const std::uint8_t* status) {
-    const std::size_t count = facts.cell.size();
+    count_studies(facts, status);
+    sum_effects(facts, status);
+}
+
+/// Counts and participants in one addition: the count above bit 40, participants below it, for as many
+/// studies as cannot overflow (largest_n twice over stays below 2^25, 2^12 times that below 2^40).
+void Tally::count_studies(const StudyFacts& facts, const std::uint8_t* status) {
+    constexpr std::size_t stretch = 4096;
     const std::size_t stride = statuses * cells_;
-    std::size_t found[4];
-    for (std::size_t claim = 0; claim < 4; ++claim) found[claim] = finds(claim);
+    const std::size_t count = facts.cell.size();
     const std::uint16_t* cell = facts.cell.data();
-    const std::uint16_t* bin = facts.bin.data();
-    const double* estimate = facts.estimate.data();
-    const double* effect = facts.effect.data();
-    Cell* sums = sums_.data();
-    std::uint32_t* ratios = ratios_.data();
-    for (std::size_t s = 0; s < count; ++s) {
-        const std::size_t at = cell[s];
-        Cell& sum = sums[(s % lanes) * stride + status[s] * cells_ + at];
-        sum.count += 1.0;
-        sum.estimate += estimate[s];
-        sum.abs_estimate += std::fabs(estimate[s]);
-        sum.effect += effect[s];
-        sum.participants += facts.participants[s];
-        ++ratios[(status[s] * 2u + found[at % 4]) * ratio_bins::count + bin[s]];
+    std::uint64_t* packed = packed_.data();
+    for (std::size_t begin = 0; begin < count; begin += stretch) {
+        const std::size_t end = std::min(count, begin + stretch);
+        for (std::size_t s = begin; s < end; ++s) {
+            packed[(s % lanes) * stride + status[s] * cells_ + cell[s]] += (std::uint64_t{1} << 40) + facts.participants[s];
+        }
+        for (std::size_t i = 0; i < packed_.size(); ++i) {
+            sums_[i].count += static_cast<double>(packed[i] >> 40);
+            sums_[i].participants += static_cast<double>(packed[i] & ((std::uint64_t{1} << 40) - 1));
+            packed[i] = 0;
+        }
     }
 }
 
-void Tally::add_question(bool real, Scope scope, QuestionCount count) {
-    auto& standings = questions_[static_cast<std::size_t>(scope)][real];
-    standings[static_cast<std::size_t>(Standing::studied)] += count.studies > 0;
-    standings[static_cast<std::size_t>(Standing::any_finding)] += count.findings > 0;
-    standings[static_cast<std::size_t>(Standing::majority)] += 2 * count.findings > count.studies;
+void Tally::sum_effects(const StudyFacts& facts, const std::uint8_t* status) {
+    const std::size_t stride = statuses * cells_;
+    std::size_t found[4];
+    for (std::size_t claim = 0; claim < 4; ++claim) found[claim] = finds(claim);
+    const std::size_t count = facts.real.size();
+    Cell* sums = sums_.data();
+    std::uint32_t* ratios = ratios_.data();
+    for (std::size_t k = 0; k < count; ++k) {
+        const std::uint32_t s = facts.real[k];
+        const std::size_t at = facts.cell[s];
+        const std::size_t its_status = status[s];
+        Cell& sum = sums[(k % lanes) * stride + its_status * cells_ + at];
+        sum.estimate += facts.estimate[k];
+        sum.abs_estimate += std::fabs(facts.estimate[k]);
+        sum.effect += facts.effect[k];
+        ++ratios[(its_status * 2 + found[at % 4]) * ratio_bins::count + facts.bin[k]];
+    }
+}
+
+void Tally::add_question(bool real, const QuestionCount& count) {
+    std::uint32_t studies = 0;
+    std::uint32_t findings = 0;
+    for (std::size_t scope = scopes; scope-- > 0;) {  // the narrowest first: each holds the one before
+        studies += count.studies[scope];
+        findings += count.findings[scope];
+        auto& standings = questions_[scope][real];
+        standings[static_cast<std::size_t>(Standing::studied)] += studies > 0;
+        standings[static_cast<std::size_t>(Standing::any_finding)] += findings > 0;
+        standings[static_cast<std::size_t>(Standing::majority)] += 2 * findings > studies;
+    }
 }
 
 void Tally::count_studies_as_manuscripts() { manuscripts_from_studies_ = true; }
@@ -66,15 +95,7 @@ void Tally::count_studies_as_manuscripts() { manuscripts_from_studies_ = true; }
 void Tally::count_studies_as_questions() { questions_from_studies_ = true; }
 
 void Tally::merge(const Tally& part) {
-    for (std::size_t i = 0; i < sums_.size(); ++i) {
-        Cell& to = sums_[i];
-        const Cell& from = part.sums_[i];
-        to.count += from.count;
-        to.estimate += from.estimate;
-        to.abs_estimate += from.abs_estimate;
-        to.effect += from.effect;
-        to.participants += from.participants;
-    }
+    for (std::size_t i = 0; i < sums_.size(); ++i) add(part.sums_[i], sums_[i]);
     for (std::size_t i = 0; i < ratios_.size(); ++i) ratios_[i] += part.ratios_[i];
     for (std::size_t i = 0; i < statuses * 6; ++i) (&manuscripts_[0][0][0])[i] += (&part.manuscripts_[0][0][0])[i];
     for (std::size_t i = 0; i < scopes * 6; ++i) (&questions_[0][0][0])[i] += (&part.questions_[0][0][0])[i];
@@ -82,76 +103,101 @@ void Tally::merge(const Tally& part) {
     questions_from_studies_ |= part.questions_from_studies_;
 }
 
+void Tally::add(const Cell& from, Cell& to) {
+    to.count += from.count;
+    to.estimate += from.estimate;
+    to.abs_estimate += from.abs_estimate;
+    to.effect += from.effect;
+    to.participants += from.participants;
+}
+
 Tally::Cell Tally::total(std::size_t status, std::size_t cell) const {
     Cell sum;
-    for (std::size_t lane = 0; lane < lanes; ++lane) {
-        const Cell& part = sums_[(lane * statuses + status) * cells_ + cell];
-        sum.count += part.count;
-        sum.estimate += part.estimate;
-        sum.abs_estimate += part.abs_estimate;
-        sum.effect += part.effect;
-        sum.participants += part.participants;
-    }
+    for (std::size_t lane = 0; lane < lanes; ++lane) add(sums_[(lane * statuses + status) * cells_ + cell], sum);
     return sum;
 }
 
-/// Median of the binned ratios by linear interpolation within the bin that holds it; NaN when empty.
-double Tally::median(std::size_t from_status, bool findings_only) const {
-    std::vector<double> counts(ratio_bins::count, 0.0);
-    double all = 0.0;
-    for (std::size_t status = from_status; status < statuses; ++status) {
-        for (std::size_t finding = findings_only; finding < 2; ++finding) {
-            const std::uint32_t* bins = &ratios_[(status * 2 + finding) * ratio_bins::count];
-            for (std::size_t b = 1; b < ratio_bins::count; ++b) {
-                counts[b] += bins[b];
-                all += bins[b];
+/// Sums of the ratio histograms over each octave, so that a median need not go through every bin.
+struct Tally::Octaves {
+    static constexpr std::size_t count = 2 * ratio_bins::octaves;
+    std::uint64_t sums[statuses][2][count] = {};
+
+    explicit Octaves(const std::vector<std::uint32_t>& ratios) {
+        for (std::size_t status = 0; status < statuses; ++status) {
+            for (std::size_t finding = 0; finding < 2; ++finding) {
+                const std::uint32_t* bins = &ratios[(status * 2 + finding) * ratio_bins::count];
+                for (std::size_t o = 0; o < count; ++o) {
+                    std::uint64_t sum = 0;
+                    for (std::size_t b = 0; b < ratio_bins::per_octave; ++b) sum += bins[o * ratio_bins::per_octave + b];
+                    sums[status][finding][o] = sum;
+                }
             }
         }
     }
+};
+
+/// Median of the binned ratios by linear interpolation within the bin that holds it; NaN when empty.
+double Tally::median(const Octaves& octaves, std::size_t from_status, bool findings_only) const {
+    const auto over = [&](auto count_of) {  // the histograms that belong to the scope
+        std::uint64_t sum = 0;
+        for (std::size_t status = from_status; status < statuses; ++status) {
+            for (std::size_t finding = findings_only; finding < 2; ++finding) sum += count_of(status, finding);
+        }
+        return static_cast<double>(sum);
+    };
+    double octave[Octaves::count];
+    double all = 0.0;
+    for (std::size_t o = 0; o < Octaves::count; ++o) {
+        octave[o] = over([&](std::size_t status, std::size_t finding) { return octaves.sums[status][finding][o]; });
+        all += octave[o];
+    }
     if (all == 0.0) return std::numeric_limits<double>::quiet_NaN();
     double below = 0.0;
-    std::size_t b = 1;
-    while (below + counts[b] < 0.5 * all) below += counts[b++];
-    const double low = ratio_bins::lower_edge(b);
-    return low + (ratio_bins::lower_edge(b + 1) - low) * (0.5 * all - below) / counts[b];
+    std::size_t o = 0;
+    while (below + octave[o] < 0.5 * all) below += octave[o++];
+    for (std::size_t b = o * ratio_bins::per_octave;; ++b) {
+        const double here = over([&](std::size_t status, std::size_t finding) {
+            return std::uint64_t{ratios_[(status * 2 + finding) * ratio_bins::count + b]};
+        });
+        if (below + here < 0.5 * all) {
+            below += here;
+            continue;
+        }
+        const double low = ratio_bins::lower_edge(b);
+        return low + (ratio_bins::lower_edge(b + 1) - low) * (0.5 * all - below) / here;
+    }
 }
 
-std::vector<double> Tally::row() const {
-    const Layout layout(kinds_);
-    std::vector<double> row(layout.size(), 0.0);
+void Tally::put_studies(const Layout& layout, std::vector<double>& row) const {
     for (std::size_t cell = 0; cell < cells_; ++cell) {
         const std::size_t kind = cell / 12;
         const auto truth = Truth(cell / 4 % 3);
         const auto claim = Claim(cell % 4);
+        const bool real = truth != Truth::null;
         Cell sum;  // of the statuses that the scope holds, the narrowest scope first
         for (std::size_t s = scopes; s-- > 0;) {
             const auto scope = Scope(s);
-            const Cell own = total(lowest_status(scope), cell);
-            sum.count += own.count;
-            sum.estimate += own.estimate;
-            sum.abs_estimate += own.abs_estimate;
-            sum.effect += own.effect;
-            sum.participants += own.participants;
+            add(total(lowest_status(scope), cell), sum);
             row[layout.studies(kind, scope, truth, claim)] = sum.count;
             row[layout.participants(kind, scope)] += sum.participants;
             if (manuscripts_from_studies_) {
                 const auto its = finds(cell) ? ManuscriptClass::supportive : ManuscriptClass::null;
-                row[layout.manuscripts(scope, truth != Truth::null, its)] += sum.count;
+                row[layout.manuscripts(scope, real, its)] += sum.count;
             }
             if (questions_from_studies_) {
-                const bool real = truth != Truth::null;
                 row[layout.questions(scope, real, Standing::studied)] += sum.count;
-                if (finds(cell)) {
-                    row[layout.questions(scope, real, Standing::any_finding)] += sum.count;
-                    row[layout.questions(scope, real, Standing::majority)] += sum.count;
-                }
+                row[layout.questions(scope, real, Standing::any_finding)] += finds(cell) ? sum.count : 0.0;
+                row[layout.questions(scope, real, Standing::majority)] += finds(cell) ? sum.count : 0.0;
             }
-            if (truth == Truth::null) continue;
+            if (!real) continue;
             row[layout.sum(kind, scope, claim, Sum::estimate)] += sum.estimate;
             row[layout.sum(kind, scope, claim, Sum::abs_estimate)] += sum.abs_estimate;
             row[layout.sum(kind, scope, claim, Sum::abs_effect)] += sum.effect;
         }
     }
+}
+
+void Tally::put_manuscripts_and_questions(const Layout& layout, std::vector<double>& row) const {
     for (std::size_t s = 0; s < scopes; ++s) {
         const auto scope = Scope(s);
         for (std::size_t real = 0; real < 2; ++real) {
@@ -163,9 +209,24 @@ std::vector<double> Tally::row() const {
                 row[layout.questions(scope, real != 0, Standing(c))] += static_cast<double>(questions_[s][real][c]);
             }
         }
-        row[layout.median(scope, Median::findings)] = median(lowest_status(scope), true);
-        row[layout.median(scope, Median::reports)] = median(lowest_status(scope), false);
     }
+}
+
+void Tally::put_medians(const Layout& layout, std::vector<double>& row) const {
+    const Octaves octaves(ratios_);
+    for (std::size_t s = 0; s < scopes; ++s) {
+        const auto scope = Scope(s);
+        row[layout.median(scope, Median::findings)] = median(octaves, lowest_status(scope), true);
+        row[layout.median(scope, Median::reports)] = median(octaves, lowest_status(scope), false);
+    }
+}
+
+std::vector<double> Tally::row() const {
+    const Layout layout(kinds_);
+    std::vector<double> row(layout.size(), 0.0);
+    put_studies(layout, row);
+    put_manuscripts_and_questions(layout, row);
+    put_medians(layout, row);
     return row;
 }
 

@@ -9,10 +9,10 @@
 
 namespace lacuna {
 
-/// What a question's studies amount to, in one scope.
+/// A question's studies and findings, by Status.
 struct QuestionCount {
-    std::uint32_t studies = 0;
-    std::uint32_t findings = 0;
+    std::uint32_t studies[3] = {};
+    std::uint32_t findings[3] = {};
 };
 
 /// The counts of one literature (or a part of it) under one regime. Parts merge by addition, in the
@@ -29,8 +29,8 @@ public:
         ++manuscripts_[static_cast<std::size_t>(status)][real][static_cast<std::size_t>(manuscript_class)];
     }
 
-    /// One question, with its counts in one scope; call once per scope.
-    void add_question(bool real, Scope scope, QuestionCount count);
+    /// One question with all its studies.
+    void add_question(bool real, const QuestionCount& count);
 
     /// Takes manuscripts and questions from the study counts added so far, instead of add_manuscript
     /// and add_question: right where every manuscript is one study and every question has at most one.
@@ -45,18 +45,26 @@ public:
 
 private:
     struct Cell {
-        double count = 0, estimate = 0, abs_estimate = 0, effect = 0, participants = 0;
-        double unused[3] = {};  // a cell is a cache line
+        double count = 0, participants = 0;                     // all studies
+        double estimate = 0, abs_estimate = 0, effect = 0;      // studies of real questions
     };
-    static constexpr std::size_t lanes = 4;  // copies of the cells, so that additions overlap
+    static constexpr std::size_t lanes = 4;  // copies of the sums, so that additions overlap
 
+    void count_studies(const StudyFacts& facts, const std::uint8_t* status);
+    void sum_effects(const StudyFacts& facts, const std::uint8_t* status);
+    static void add(const Cell& from, Cell& to);
     Cell total(std::size_t status, std::size_t cell) const;
     bool finds(std::size_t cell) const { return is_finding(Claim(cell % 4), findings_); }
-    double median(std::size_t lowest_status, bool findings_only) const;
+    struct Octaves;
+    double median(const Octaves& octaves, std::size_t lowest_status, bool findings_only) const;
+    void put_medians(const Layout& layout, std::vector<double>& row) const;
+    void put_studies(const Layout& layout, std::vector<double>& row) const;
+    void put_manuscripts_and_questions(const Layout& layout, std::vector<double>& row) const;
 
     std::size_t kinds_, cells_;
     Findings findings_;
     std::vector<Cell> sums_;                   // [lane][status][cell]
+    std::vector<std::uint64_t> packed_;        // [lane][status][cell], scratch of count_studies
     std::vector<std::uint32_t> ratios_;        // [status][finding][bin]
     std::uint64_t manuscripts_[3][2][3] = {};  // [status][real][class]
     std::uint64_t questions_[3][2][3] = {};    // [scope][real][standing]

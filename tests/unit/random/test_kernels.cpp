@@ -4,6 +4,7 @@
 #include <hwy/targets.h>
 #include <numeric>
 
+#include "sim/random/chance.h"
 #include "sim/random/kernels.h"
 #include "tests/oracle/verdict.h"
 
@@ -131,4 +132,70 @@ TEST_CASE("One draw from each of many keyed streams is uniform: chi-squared over
     CHECK(statistic(over_literatures) < critical);
     CHECK(statistic(over_studies) < critical);
     CHECK(statistic(over_seeds) < critical);
+}
+
+TEST_CASE("Words are the documented parts of their block, from any start and in any order", "[random]") {
+    const Address address{2, Purpose::acceptance, 1, 77};
+    const auto block_word = [&](std::uint64_t block, std::uint64_t which) {
+        Stream stream(key, address, block);
+        std::uint32_t drawn = stream();
+        for (; which > 0; --which) drawn = stream();
+        return drawn;
+    };
+    const auto word32 = [&](std::uint64_t e) { return block_word(e / 64 * 16 + e % 16, e / 16 % 4); };
+    const auto word16 = [&](std::uint64_t e) {
+        const std::uint32_t whole = block_word(e / 128 * 16 + e % 16, e / 16 % 4);
+        return static_cast<std::uint16_t>(e / 64 % 2 == 0 ? whole : whole >> 16);
+    };
+    const std::vector<std::uint32_t> offsets{5, 5, 900, 63, 64, 127, 128, 16, 0, 4000000000u, 17, 1, 2};
+    for (const std::int64_t target : hwy::SupportedAndGeneratedTargets()) {
+        hwy::SetSupportedTargetsForTest(target);
+        for (const std::uint64_t first : {0ull, 1ull, 63ull, 64ull, 130ull, (1ull << 39) - 3}) {
+            std::vector<std::uint32_t> wide(301);
+            std::vector<std::uint16_t> narrow(301);
+            words(key, address, {first, nullptr, wide.size()}, wide.data());
+            words(key, address, {first, nullptr, narrow.size()}, narrow.data());
+            for (std::size_t i = 0; i < wide.size(); ++i) {
+                REQUIRE(wide[i] == word32(first + i));
+                REQUIRE(narrow[i] == word16(first + i));
+            }
+        }
+        std::vector<std::uint32_t> wide(offsets.size());
+        std::vector<std::uint16_t> narrow(offsets.size());
+        words(key, address, {10, offsets.data(), offsets.size()}, wide.data());
+        words(key, address, {10, offsets.data(), offsets.size()}, narrow.data());
+        for (std::size_t i = 0; i < offsets.size(); ++i) {
+            REQUIRE(wide[i] == word32(10ull + offsets[i]));
+            REQUIRE(narrow[i] == word16(10ull + offsets[i]));
+        }
+        hwy::SetSupportedTargetsForTest(0);
+    }
+}
+
+TEST_CASE("A refined uniform begins with its word", "[random]") {
+    for (std::uint32_t e = 0; e < 1000; ++e) {
+        const double fine = refined(key, {0, Purpose::writing, 0, 0}, e, 0x1234, 16);
+        REQUIRE(std::floor(fine * 0x1p16) == 0x1234);
+    }
+}
+
+TEST_CASE("Decisions have their chance exactly, also where the word alone cannot tell", "[random]") {
+    // Chances that differ by less than 2^-16 share their sure words; the open ones make the difference.
+    const std::size_t count = 1u << 22;
+    std::vector<std::uint16_t> drawn(count);
+    const Address address{0, Purpose::writing, 0, 0};
+    words(key, address, {0, nullptr, count}, drawn.data());
+    for (const double p : {0.0, 1e-6, 1e-5, 0.05, 0.5, 0.3, 1 - 1e-6, 1.0}) {
+        const Chance chance(p);
+        std::vector<std::uint8_t> happened(count);
+        decide(key, address, count, drawn.data(), [&](std::size_t) -> const Chance& { return chance; },
+               [](std::size_t i) { return i; }, happened.data());
+        const double share = static_cast<double>(std::count(happened.begin(), happened.end(), 1)) / static_cast<double>(count);
+        INFO(p);
+        if (p == 0.0 || p == 1.0) {
+            CHECK(share == p);
+        } else {
+            CHECK(std::fabs(oracle::z_score(share, p, oracle::share_error(p, static_cast<double>(count)))) < 4);
+        }
+    }
 }

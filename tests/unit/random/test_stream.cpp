@@ -49,13 +49,13 @@ TEST_CASE("A stream is a pure function of seed, literature, purpose, study, inde
 
 TEST_CASE("A stream's counter is the one documented", "[random]") {
     Stream stream({0x1122334455667788u}, {0xAABBCCDDu, Purpose::acceptance, 0x0102, 5}, 0x03DEADBEEFu);
-    const auto expected = r123::Philox4x32()({{5u, 0xDEADBEEFu, 0x01020000u | 13u << 8 | 0x03u, 0xAABBCCDDu}},
+    const auto expected = r123::Philox4x32()({{5u, 0xDEADBEEFu, 0x01020000u | 14u << 8 | 0x03u, 0xAABBCCDDu}},
                                              {{0x55667788u, 0x11223344u}});
     CHECK(stream() == expected[0]);
     CHECK(stream() == expected[1]);
     CHECK(stream() == expected[2]);
     CHECK(stream() == expected[3]);
-    const auto next = r123::Philox4x32()({{6u, 0xDEADBEEFu, 0x01020000u | 13u << 8 | 0x03u, 0xAABBCCDDu}},
+    const auto next = r123::Philox4x32()({{6u, 0xDEADBEEFu, 0x01020000u | 14u << 8 | 0x03u, 0xAABBCCDDu}},
                                          {{0x55667788u, 0x11223344u}});
     CHECK(stream() == next[0]);
 }

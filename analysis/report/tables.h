@@ -1,0 +1,16 @@
+// Results for people.
+#pragma once
+
+#include <string>
+
+#include "analysis/estimand/result.h"
+
+namespace lacuna {
+
+/// The few numbers that tell most, conducted beside published, and what each regime changes in them.
+std::string headline_tables(const Results& results);
+
+/// Every estimand, scope by scope and stratum by stratum, and every difference between regimes.
+std::string full_tables(const Results& results);
+
+}  // namespace lacuna

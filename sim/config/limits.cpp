@@ -1,0 +1,87 @@
+#include "sim/config/limits.h"
+
+#include <fmt/format.h>
+
+#include <cmath>
+#include <set>
+
+namespace lacuna {
+
+namespace {
+
+constexpr double most_entities = 0x1p40;  // entities have 40 bits in the random streams
+constexpr double most_rows = 0x1p31;      // row numbers in the outcome file are 32-bit
+constexpr std::size_t most_cuts = 255;    // levels of p are stored as bytes
+
+double lines_per_lab(const std::vector<LabKind>& labs) {
+    double lines = 0.0;
+    for (const LabKind& lab : labs) lines += lab.share * mean(lab.lines);
+    return lines;
+}
+
+double studies_per_lab(const std::vector<LabKind>& labs) {
+    double studies = 0.0;
+    for (const LabKind& lab : labs) studies += lab.share * mean(lab.lines) * lab.studies.longest();
+    return studies;
+}
+
+/// Different values of p at which some journal's chance changes, over all regimes: manuscripts of regimes
+/// with the same science share their levels.
+std::size_t count_cuts(const std::vector<Regime>& regimes) {
+    std::set<std::pair<int, double>> cuts;
+    for (const Regime& regime : regimes) {
+        for (const Journal& journal : regime.rules.journals) {
+            for (const double step : journal.accept.steps) cuts.emplace(journal.accept.sides, step);
+        }
+    }
+    return cuts.size();
+}
+
+class Limits {
+public:
+    explicit Limits(const ConfigNode& root) : root_(root) {}
+
+    void demand(bool holds, const char* key, std::string message, std::string remedy) {
+        if (holds) return;
+        faults_.push_back({nearest_node(root_, key).place, key, std::move(message), std::move(remedy)});
+    }
+    std::vector<Fault> take() { return std::move(faults_); }
+
+private:
+    const ConfigNode& root_;
+    std::vector<Fault> faults_;
+};
+
+}  // namespace
+
+std::vector<Fault> limit_faults(const Document& document, const ConfigNode& root) {
+    const Field& field = document.science.field;
+    const double labs = static_cast<double>(field.labs);
+    const double lines = labs * lines_per_lab(document.science.labs);
+    const double studies = labs * studies_per_lab(document.science.labs);
+    const bool rows_kept = document.store.detail != Detail::literatures;
+    Limits limits(root);
+    limits.demand(
+        studies < most_entities, "field.labs",
+        fmt::format("one literature would hold up to {:.3g} studies; the most is {:.3g}", studies, most_entities),
+        "lower field.labs, lab.lines or the length of lines, and simulate more literatures");
+    limits.demand(
+        !rows_kept || static_cast<double>(field.questions) < most_rows, "field.questions",
+        fmt::format("store.detail = \"{}\" holds at most 2147483647 questions", word_for(document.store.detail)),
+        "use store.detail = \"literatures\"");
+    limits.demand(!rows_kept || lines < most_rows, "field.labs",
+                  fmt::format("store.detail = \"{}\" holds at most 2147483647 lines, here about {:.3g}",
+                              word_for(document.store.detail), lines),
+                  "use store.detail = \"literatures\"");
+    return limits.take();
+}
+
+std::vector<Fault> limit_faults(const Scenario& scenario, const ConfigNode& root) {
+    Limits limits(root);
+    limits.demand(count_cuts(scenario.regimes) <= most_cuts, "journal",
+                  fmt::format("the steps of all journals hold more than {} different values of p", most_cuts),
+                  "use fewer steps");
+    return limits.take();
+}
+
+}  // namespace lacuna

@@ -1,0 +1,170 @@
+#include <algorithm>
+#include <catch2/catch.hpp>
+#include <cmath>
+
+#include "sim/random/kernels.h"
+#include "sim/tally/tally.h"
+
+using namespace lacuna;
+
+namespace {
+
+struct Columns {
+    std::vector<std::uint8_t> truth, claim, kind, status;
+    std::vector<double> estimate, effect;
+    std::vector<std::uint32_t> participants;
+
+    StudyColumns view() const {
+        return {truth.size(), truth.data(), claim.data(), kind.data(), estimate.data(), effect.data(), participants.data()};
+    }
+};
+
+/// `count` invented studies of two lab kinds with every combination of codes.
+Columns invented(std::size_t count) {
+    Columns c;
+    for (std::uint32_t i = 0; i < count; ++i) {
+        Stream stream({4}, {0, Purpose::study_data, 0, 0}, i);
+        const double u = stream.uniform();
+        c.truth.push_back(static_cast<std::uint8_t>(stream() % 3));
+        c.claim.push_back(static_cast<std::uint8_t>(stream() % 3));
+        c.kind.push_back(static_cast<std::uint8_t>(stream() % 2));
+        c.status.push_back(static_cast<std::uint8_t>(stream() % 3));
+        const double size = 0.1 + u;
+        c.effect.push_back(c.truth.back() == 0 ? 0.0 : c.truth.back() == 1 ? size : -size);
+        c.estimate.push_back(4 * stream.uniform() - 2);
+        c.participants.push_back(2 + stream() % 100);
+    }
+    return c;
+}
+
+double sum_where(const Columns& c, const std::vector<double>& what, auto keep) {
+    double sum = 0.0;
+    for (std::size_t s = 0; s < c.truth.size(); ++s) sum += keep(s) ? what[s] : 0.0;
+    return sum;
+}
+
+}  // namespace
+
+TEST_CASE("A tally's row holds the counts and sums of a plain loop", "[tally]") {
+    const Columns c = invented(10007);
+    StudyFacts facts;
+    make_study_facts(c.view(), facts);
+    Tally tally(2, Findings::either);
+    tally.add_studies(facts, c.status.data());
+    const std::vector<double> row = tally.row();
+    const Layout layout(2);
+    REQUIRE(row.size() == layout.size());
+    const std::vector<double> ones(c.truth.size(), 1.0);
+    const std::vector<double> people(c.participants.begin(), c.participants.end());
+    std::vector<double> oriented, absolute, effect;
+    for (std::size_t s = 0; s < c.truth.size(); ++s) {
+        oriented.push_back(c.effect[s] < 0 ? -c.estimate[s] : c.estimate[s]);
+        absolute.push_back(std::fabs(c.estimate[s]));
+        effect.push_back(std::fabs(c.effect[s]));
+    }
+    for (std::size_t kind = 0; kind < 2; ++kind) {
+        for (std::size_t scope = 0; scope < 3; ++scope) {
+            const auto in = [&](std::size_t s) { return c.kind[s] == kind && c.status[s] >= scope; };
+            CHECK(row[layout.participants(kind, Scope(scope))] == sum_where(c, people, in));
+            for (std::size_t claim = 0; claim < 4; ++claim) {
+                for (std::size_t truth = 0; truth < 3; ++truth) {
+                    CHECK(row[layout.studies(kind, Scope(scope), Truth(truth), Claim(claim))] ==
+                          sum_where(c, ones, [&](std::size_t s) { return in(s) && c.truth[s] == truth && c.claim[s] == claim; }));
+                }
+                const auto real = [&](std::size_t s) { return in(s) && c.truth[s] != 0 && c.claim[s] == claim; };
+                const auto sum = [&](Sum what) { return row[layout.sum(kind, Scope(scope), Claim(claim), what)]; };
+                CHECK(sum(Sum::estimate) == Approx(sum_where(c, oriented, real)).epsilon(1e-12).margin(1e-9));
+                CHECK(sum(Sum::abs_estimate) == Approx(sum_where(c, absolute, real)).epsilon(1e-12));
+                CHECK(sum(Sum::abs_effect) == Approx(sum_where(c, effect, real)).epsilon(1e-12));
+            }
+        }
+    }
+}
+
+TEST_CASE("The binned median is within half a bin of the sorted one", "[tally]") {
+    const Columns c = invented(20011);
+    StudyFacts facts;
+    make_study_facts(c.view(), facts);
+    Tally tally(2, Findings::either);
+    tally.add_studies(facts, c.status.data());
+    const std::vector<double> row = tally.row();
+    const Layout layout(2);
+    for (std::size_t scope = 0; scope < 3; ++scope) {
+        for (const bool findings : {true, false}) {
+            std::vector<double> ratios;
+            for (std::size_t s = 0; s < c.truth.size(); ++s) {
+                if (c.truth[s] == 0 || c.status[s] < scope || (findings && c.claim[s] == 0)) continue;
+                ratios.push_back((c.effect[s] < 0 ? -c.estimate[s] : c.estimate[s]) / std::fabs(c.effect[s]));
+            }
+            const auto middle = ratios.begin() + static_cast<std::ptrdiff_t>(ratios.size() / 2);
+            std::nth_element(ratios.begin(), middle, ratios.end());
+            const double got = row[layout.median(Scope(scope), findings ? Median::findings : Median::reports)];
+            // A bin spans 1/64 of its lower edge's octave; around zero, 2^-7.
+            CHECK(std::fabs(got - *middle) < std::max(std::fabs(*middle) / 64, 0x1p-7));
+        }
+    }
+}
+
+TEST_CASE("Bins are ordered and hold their ratios", "[tally]") {
+    for (std::size_t b = 0; b < ratio_bins::count; ++b) {
+        REQUIRE(ratio_bins::lower_edge(b) < ratio_bins::lower_edge(b + 1));
+    }
+    Columns c;
+    std::vector<double> ratios{0.0, -0.0, 1e-9, -1e-9, 0.0078125, -0.0078125, 0.5, 1.0, -1.0, 1.01, 77.0, -77.0, 4000.0, 1e9, -1e9};
+    while (ratios.size() % 8 != 3) ratios.push_back(2.5);  // some by vectors, some by the scalar tail
+    for (const double r : ratios) {
+        c.truth.push_back(1);
+        c.claim.push_back(1);
+        c.effect.push_back(0.25);
+        c.estimate.push_back(0.25 * r);
+        c.participants.push_back(2);
+    }
+    StudyFacts facts;
+    make_study_facts({c.truth.size(), c.truth.data(), c.claim.data(), nullptr, c.estimate.data(), c.effect.data(), c.participants.data()}, facts);
+    for (std::size_t i = 0; i < ratios.size(); ++i) {
+        const std::size_t bin = facts.bin[i];
+        INFO(ratios[i] << " in bin " << bin);
+        if (std::fabs(ratios[i]) < 4096) {
+            CHECK(ratio_bins::lower_edge(bin) <= ratios[i]);
+            CHECK(ratios[i] <= ratio_bins::lower_edge(bin + 1));
+        } else {
+            CHECK(bin == (ratios[i] > 0 ? ratio_bins::count - 1 : 0));
+        }
+    }
+}
+
+TEST_CASE("Parts of a tally merge to the whole, and an empty one has no median", "[tally]") {
+    const Columns c = invented(5000);
+    StudyFacts facts;
+    make_study_facts(c.view(), facts);
+    Tally whole(2, Findings::predicted), part(2, Findings::predicted), sum(2, Findings::predicted);
+    whole.add_studies(facts, c.status.data());
+    whole.add_studies(facts, c.status.data());
+    part.add_studies(facts, c.status.data());
+    sum.merge(part);
+    sum.merge(part);
+    const auto a = whole.row();
+    const auto b = sum.row();
+    for (std::size_t i = 0; i < a.size(); ++i) CHECK(a[i] == Approx(b[i]).epsilon(1e-13));
+    sum.clear();
+    const auto empty = sum.row();
+    const Layout layout(2);
+    CHECK(std::isnan(empty[layout.median(Scope::published, Median::findings)]));
+    CHECK(empty[layout.participants(0, Scope::conducted)] == 0.0);
+}
+
+TEST_CASE("A majority is more than half of a question's studies, scope by scope", "[tally]") {
+    Tally tally(1, Findings::either);
+    QuestionCount q;
+    q.studies[2] = 2;   // published, one of them a finding
+    q.findings[2] = 1;
+    q.studies[0] = 1;   // unwritten finding
+    q.findings[0] = 1;
+    tally.add_question(true, q);
+    const auto row = tally.row();
+    const Layout layout(1);
+    CHECK(row[layout.questions(Scope::published, true, Standing::any_finding)] == 1);
+    CHECK(row[layout.questions(Scope::published, true, Standing::majority)] == 0);
+    CHECK(row[layout.questions(Scope::conducted, true, Standing::majority)] == 1);
+    CHECK(row[layout.questions(Scope::conducted, false, Standing::studied)] == 0);
+}
