@@ -78,8 +78,10 @@ private:
         report("a table header needs a key", "as in [field] or [[journal]]");
     }
 
+    /// What follows a backslash, or the line end after it, is looked at as white space.
     void check_escape() {
-        const bool is_ascii = at_ >= text_.size() || static_cast<unsigned char>(text_[at_]) < 0x80u;
+        const std::size_t next = text_.find_first_not_of(" \t\r\n", at_);
+        const bool is_ascii = next == std::string_view::npos || static_cast<unsigned char>(text_[next]) < 0x80u;
         if (!is_ascii) report("a backslash must not stand before this character", "write \\\\ for a backslash");
     }
 

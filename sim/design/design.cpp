@@ -11,8 +11,10 @@ namespace lacuna {
 
 std::uint32_t smallest_n(Test test) {
     switch (test) {
-        case Test::two_means: return two_means::smallest_n;
-        case Test::known_variance: return known_variance::smallest_n;
+        case Test::two_means:
+            return two_means::smallest_n;
+        case Test::known_variance:
+            return known_variance::smallest_n;
     }
     throw Defect("smallest_n: unknown design");
 }
@@ -20,8 +22,10 @@ std::uint32_t smallest_n(Test test) {
 double critical_value(Test test, double df, double alpha, int sides) {
     const double tail = sides == 2 ? 0.5 * alpha : alpha;
     switch (test) {
-        case Test::two_means: return t_critical(df, tail);
-        case Test::known_variance: return t_critical(infinity, tail);
+        case Test::two_means:
+            return t_critical(df, tail);
+        case Test::known_variance:
+            return t_critical(infinity, tail);
     }
     throw Defect("critical_value: unknown design");
 }
@@ -32,8 +36,10 @@ TestPlan describe(const Design& design, std::uint32_t n) {
         return plan;
     };
     switch (design.test) {
-        case Test::two_means: return with_critical(two_means::plan({n, n}));
-        case Test::known_variance: return with_critical(known_variance::plan({n, 0}));
+        case Test::two_means:
+            return with_critical(two_means::plan({n, n}));
+        case Test::known_variance:
+            return with_critical(known_variance::plan({n, 0}));
     }
     throw Defect("describe: unknown design");
 }
@@ -59,7 +65,8 @@ double reported_standard_error(const Design& design, const TestPlan& plan, doubl
             const double of_d = two_means::standard_error(plan.size, statistic / plan.noncentrality);
             return design.estimate == EffectEstimate::g ? plan.correction * of_d : of_d;
         }
-        case Test::known_variance: return known_variance::standard_error(plan.size);
+        case Test::known_variance:
+            return known_variance::standard_error(plan.size);
     }
     throw Defect("reported_standard_error: unknown design");
 }

@@ -62,11 +62,15 @@ std::uint32_t planned_n(const Design& design, double target_power, double effect
 IntegerDistribution size_distribution(const Design& design, const SizePlan& size) {
     IntegerDistribution sizes;
     switch (size.kind) {
-        case SizePlan::Kind::fixed: sizes = {static_cast<long>(size.n), {1.0}}; break;
+        case SizePlan::Kind::fixed:
+            sizes = {static_cast<long>(size.n), {1.0}};
+            break;
         case SizePlan::Kind::power:
             sizes = {static_cast<long>(planned_n(design, size.power, size.effect)), {1.0}};
             break;
-        case SizePlan::Kind::distribution: sizes = rounded(size.distribution, size.round_down); break;
+        case SizePlan::Kind::distribution:
+            sizes = rounded(size.distribution, size.round_down);
+            break;
     }
     const long last = sizes.first + static_cast<long>(sizes.chance.size()) - 1;
     if (sizes.first < static_cast<long>(smallest_n(design.test))) refuse_size(design, sizes.first);

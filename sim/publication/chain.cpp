@@ -98,10 +98,16 @@ void judge(StreamKey key, Address address, const PreparedRules::PreparedJournal&
     const auto entity = [&](std::size_t i) { return entity_of(segment, waiting[i]); };
     const std::uint8_t* facts = seen(journal.accept, segment, scratch, outcome);
     const Chance* chances = journal.accept.chance.data();
+    const bool everyone = count == segment.entities.count;
     scratch.happened.resize(count);
     address.index = journal.index;
     address.purpose = Purpose::acceptance;
     waiting_words(key, address, segment, scratch, scratch.words);
+    if (journal.results_blind.p() == 0.0 && everyone) {
+        decide(key, address, count, scratch.words.data(),
+               [&](std::size_t i) -> const Chance& { return chances[facts[i]]; }, entity, scratch.happened.data());
+        return;
+    }
     if (journal.results_blind.p() == 0.0) {
         decide(key, address, count, scratch.words.data(),
                [&](std::size_t i) -> const Chance& { return chances[facts[waiting[i]]]; }, entity,
@@ -132,13 +138,22 @@ void submit(StreamKey key, Address address, const PreparedRules& rules, std::siz
     std::uint8_t* attempts = outcome.attempts.data() + segment.begin;
     const auto number = static_cast<std::uint8_t>(j + 1);
     const std::size_t count = scratch.waiting.size();
+    if (count == segment.entities.count) {  // without the indirection these loops are vectors
+        for (std::size_t i = 0; i < count; ++i) status[i] = static_cast<std::uint8_t>(unpublished + accepted[i]);
+        for (std::size_t i = 0; i < count; ++i) published_by[i] = static_cast<std::uint8_t>(number * accepted[i]);
+        std::fill(attempts, attempts + count, number);
+    } else {
+        for (std::size_t i = 0; i < count; ++i) {
+            const std::uint32_t m = waiting[i];
+            status[m] = static_cast<std::uint8_t>(unpublished + accepted[i]);
+            published_by[m] = static_cast<std::uint8_t>(number * accepted[i]);
+            attempts[m] = number;
+        }
+    }
+    if (j + 1 == rules.journals.size()) return;
     std::size_t rejected = 0;
     for (std::size_t i = 0; i < count; ++i) {
-        const std::uint32_t m = waiting[i];
-        status[m] = static_cast<std::uint8_t>(unpublished + accepted[i]);
-        published_by[m] = static_cast<std::uint8_t>(number * accepted[i]);
-        attempts[m] = number;
-        waiting[rejected] = m;
+        waiting[rejected] = waiting[i];
         rejected += 1u - accepted[i];
     }
     scratch.waiting.resize(rejected);

@@ -12,19 +12,18 @@ namespace lacuna {
 class Chance {
 public:
     Chance() = default;
-    explicit Chance(double p) : threshold_(static_cast<std::uint32_t>(p * 0x1p16)), p_(p) {}
+    explicit Chance(double p) : threshold_(p < 1.0 ? static_cast<std::uint16_t>(p * 0x1p16) : 0xFFFFu), p_(p) {}
 
     double p() const { return p_; }
-    bool sure(std::uint16_t word) const { return word < threshold_; }
-    bool open(std::uint16_t word) const { return word == threshold_; }
+    std::uint16_t threshold() const { return threshold_; }  // min(floor(2^16 p), 2^16 - 1)
 
     /// Whether the event with this word happens for `entity` at `address`.
     bool happens(std::uint16_t word, StreamKey key, Address address, std::uint64_t entity) const {
-        return open(word) ? refined(key, address, entity, word, 16) < p_ : sure(word);
+        return word == threshold_ ? refined(key, address, entity, word, 16) < p_ : word < threshold_;
     }
 
 private:
-    std::uint32_t threshold_ = 0;  // floor(2^16 p)
+    std::uint16_t threshold_ = 0;
     double p_ = 0.0;
 };
 
@@ -33,15 +32,15 @@ private:
 template <class ChanceOf, class EntityOf>
 void decide(StreamKey key, Address address, std::size_t count, const std::uint16_t* words, ChanceOf chance,
             EntityOf entity, std::uint8_t* happened) {
-    bool open = false;
+    std::uint16_t open = 0;
     for (std::size_t i = 0; i < count; ++i) {
-        const Chance& its = chance(i);
-        happened[i] = its.sure(words[i]);
-        open |= its.open(words[i]);
+        const std::uint16_t threshold = chance(i).threshold();
+        happened[i] = words[i] < threshold;
+        open |= static_cast<std::uint16_t>(words[i] == threshold);
     }
-    if (!open) return;
+    if (open == 0) return;
     for (std::size_t i = 0; i < count; ++i) {
-        if (chance(i).open(words[i])) happened[i] = chance(i).happens(words[i], key, address, entity(i));
+        if (words[i] == chance(i).threshold()) happened[i] = chance(i).happens(words[i], key, address, entity(i));
     }
 }
 

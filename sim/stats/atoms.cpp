@@ -1,7 +1,6 @@
 #include "sim/stats/atoms.h"
 
 #include <algorithm>
-
 #include <boost/math/distributions/poisson.hpp>
 
 #include "sim/base/fault.h"
@@ -42,8 +41,10 @@ void settle(std::vector<Node>& nodes) {
     for (const Node& node : nodes) {
         if (!(node.weight > 0.0)) continue;
         total += node.weight;
-        if (!merged.empty() && merged.back().x == node.x) merged.back().weight += node.weight;
-        else merged.push_back(node);
+        if (!merged.empty() && merged.back().x == node.x)
+            merged.back().weight += node.weight;
+        else
+            merged.push_back(node);
     }
     for (Node& node : merged) node.weight /= total;
     nodes = std::move(merged);

@@ -26,17 +26,22 @@ template <class Use>
 double with_boost_law(const Distribution& d, Use use) {
     namespace bm = boost::math;
     switch (d.family) {
-        case Family::normal: return use(bm::normal_distribution<double, QuietPolicy>(d.first, d.second));
+        case Family::normal:
+            return use(bm::normal_distribution<double, QuietPolicy>(d.first, d.second));
         case Family::lognormal:
             return use(bm::lognormal_distribution<double, QuietPolicy>(std::log(d.first), d.second));
-        case Family::gamma: return use(bm::gamma_distribution<double, QuietPolicy>(d.second, d.first / d.second));
+        case Family::gamma:
+            return use(bm::gamma_distribution<double, QuietPolicy>(d.second, d.first / d.second));
         case Family::beta:
             return use(bm::beta_distribution<double, QuietPolicy>(d.first * d.second, (1.0 - d.first) * d.second));
-        case Family::uniform: return use(bm::uniform_distribution<double, QuietPolicy>(d.first, d.second));
-        case Family::poisson: return use(bm::poisson_distribution<double, QuietPolicy>(d.first));
+        case Family::uniform:
+            return use(bm::uniform_distribution<double, QuietPolicy>(d.first, d.second));
+        case Family::poisson:
+            return use(bm::poisson_distribution<double, QuietPolicy>(d.first));
         case Family::fixed:
         case Family::half_normal:
-        case Family::discrete: break;
+        case Family::discrete:
+            break;
     }
     throw Defect("with_boost_law: this family is computed directly");
 }

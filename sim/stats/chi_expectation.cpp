@@ -1,10 +1,9 @@
 #include "sim/stats/chi_expectation.h"
 
 #include <algorithm>
-#include <cmath>
-
 #include <boost/math/quadrature/gauss.hpp>
 #include <boost/math/special_functions/log1p.hpp>
+#include <cmath>
 
 namespace lacuna {
 

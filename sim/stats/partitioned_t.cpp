@@ -46,8 +46,10 @@ std::vector<TruncatedT> PartitionedT::operator()(double noncentrality) const {
             }
         }
     };
-    if (scales_.empty()) add(chi_nodes(df_, chi_pieces(df_, noncentrality, ends_)));
-    else add(scales_);
+    if (scales_.empty())
+        add(chi_nodes(df_, chi_pieces(df_, noncentrality, ends_)));
+    else
+        add(scales_);
     return parts;
 }
 

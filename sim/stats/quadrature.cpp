@@ -1,5 +1,4 @@
 #include <algorithm>
-
 #include <boost/math/quadrature/gauss.hpp>
 
 #include "sim/base/fault.h"

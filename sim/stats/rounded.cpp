@@ -64,7 +64,9 @@ IntegerDistribution rounded(const Distribution& distribution, bool down, std::si
     IntegerDistribution result{static_cast<long>(first), std::vector<double>(std::size_t(last - first) + 1)};
     add_masses(d, first, down, result.chance);
     if (d.clamp) {  // atoms; a bound so far out that no integer of the support reaches it has no mass
-        const auto at = [&](double bound) { return std::size_t(std::clamp(to_integer(bound, down), first, last) - first); };
+        const auto at = [&](double bound) {
+            return std::size_t(std::clamp(to_integer(bound, down), first, last) - first);
+        };
         if (d.min > -infinity) result.chance[at(d.min)] += untruncated::lower(d, d.min);
         if (d.max < infinity) result.chance[at(d.max)] += untruncated::upper(d, d.max);
     }

@@ -1,12 +1,11 @@
 #include "sim/stats/student_t.h"
 
 #include <array>
-#include <cmath>
-#include <limits>
-
 #include <boost/math/distributions/normal.hpp>
 #include <boost/math/distributions/students_t.hpp>
 #include <boost/math/special_functions/gamma.hpp>
+#include <cmath>
+#include <limits>
 
 #include "sim/base/fault.h"
 #include "sim/stats/chi_expectation.h"

@@ -1,9 +1,8 @@
 #include "sim/stats/untruncated.h"
 
 #include <algorithm>
-#include <numbers>
-
 #include <boost/math/special_functions/erf.hpp>
+#include <numbers>
 
 #include "sim/stats/boost_law.h"
 
@@ -69,7 +68,8 @@ Distribution without_degeneracy(const Distribution& distribution) {
             if (d.first == d.second) becomes(d.first);
             break;
         case Family::fixed:
-        case Family::discrete: break;
+        case Family::discrete:
+            break;
     }
     return d;
 }
@@ -123,7 +123,8 @@ double upper_quantile(const Distribution& d, double q) {
     if (q >= 1.0) return support_low(d);
     if (q <= 0.0) return support_high(d);
     if (d.family == Family::half_normal) return d.first * std::numbers::sqrt2 * boost::math::erfc_inv(q);
-    return with_boost_law(d, [q](const auto& law) { return boost::math::quantile(boost::math::complement(law, q)); });
+    return with_boost_law(d,
+                          [q](const auto& law) { return boost::math::quantile(boost::math::complement(law, q)); });
 }
 
 double mean(const Distribution& d) {
@@ -132,11 +133,16 @@ double mean(const Distribution& d) {
         case Family::normal:
         case Family::gamma:
         case Family::beta:
-        case Family::poisson: return d.first;
-        case Family::half_normal: return d.first * std::numbers::sqrt2 * std::numbers::inv_sqrtpi;
-        case Family::lognormal: return d.first * std::exp(0.5 * d.second * d.second);
-        case Family::uniform: return 0.5 * (d.first + d.second);
-        case Family::discrete: break;
+        case Family::poisson:
+            return d.first;
+        case Family::half_normal:
+            return d.first * std::numbers::sqrt2 * std::numbers::inv_sqrtpi;
+        case Family::lognormal:
+            return d.first * std::exp(0.5 * d.second * d.second);
+        case Family::uniform:
+            return 0.5 * (d.first + d.second);
+        case Family::discrete:
+            break;
     }
     double sum = 0.0, all = 0.0;
     for (std::size_t i = 0; i < d.values.size(); ++i) {

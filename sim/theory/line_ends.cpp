@@ -9,9 +9,12 @@ namespace {
 bool goes_on(const LineRule& rule, std::uint32_t studies, std::uint32_t findings) {
     if (studies >= rule.longest()) return false;
     switch (rule.kind) {
-        case LineRule::Kind::fixed: return true;
-        case LineRule::Kind::until_positive: return findings == 0;
-        case LineRule::Kind::until_failures: return studies - findings < rule.failures;
+        case LineRule::Kind::fixed:
+            return true;
+        case LineRule::Kind::until_positive:
+            return findings == 0;
+        case LineRule::Kind::until_failures:
+            return studies - findings < rule.failures;
     }
     return false;
 }

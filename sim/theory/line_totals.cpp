@@ -57,7 +57,8 @@ void add_end(const LineEnd& end, double direction, ClassCounts& counts) {
     } else {
         const double agree = std::pow(direction, f), against = std::pow(1.0 - direction, f);
         supportive.add(w * (agree + against), {w * f * agree, w * f * against, 0.0});
-        mixed.add(w * (1.0 - agree - against), {w * f * (direction - agree), w * f * (1.0 - direction - against), 0.0});
+        mixed.add(w * (1.0 - agree - against),
+                  {w * f * (direction - agree), w * f * (1.0 - direction - against), 0.0});
     }
 }
 
@@ -178,7 +179,8 @@ void add_studies(const LineRule& rule, Findings findings, const PublicationChanc
 
 double expected_studies(const LineRule& rule, const Law& law) {
     double studies = 0.0;
-    for (const LineEnd& end : line_ends(rule, law.chance[finds] + law.chance[finds_reversed], law.chance[finds_nothing])) {
+    for (const LineEnd& end :
+         line_ends(rule, law.chance[finds] + law.chance[finds_reversed], law.chance[finds_nothing])) {
         studies += end.weight * end.studies;
     }
     return studies;
@@ -194,8 +196,10 @@ LineTotals line_totals(const LineRule& rule, Unit unit, Findings findings, const
     for (const Cell& cell : cells) {
         totals.studies[std::size_t(Scope::conducted)][static_cast<std::size_t>(cell.claim)].add(cell.sums, studies);
     }
-    if (unit == Unit::study) add_studies(rule, findings, chance, cells, studies, totals);
-    else add_lines(rule, unit, findings, chance, cells, totals);
+    if (unit == Unit::study)
+        add_studies(rule, findings, chance, cells, studies, totals);
+    else
+        add_lines(rule, unit, findings, chance, cells, totals);
     return totals;
 }
 

@@ -73,7 +73,8 @@ void add_units(const ScopeTotals& totals, bool of_questions, Scoped& out) {
     };
     out.ratio("false_discovery_rate_manuscripts", claiming(0), claiming(0) + claiming(1));
     if (!of_questions) return;
-    out.ratio("false_discovery_rate_questions", totals.established[0], totals.established[0] + totals.established[1]);
+    out.ratio("false_discovery_rate_questions", totals.established[0],
+              totals.established[0] + totals.established[1]);
 }
 
 double studies_in(const ScopeTotals& totals) {

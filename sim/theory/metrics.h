@@ -16,9 +16,9 @@ struct Total {
 };
 
 struct ScopeTotals {
-    std::array<std::array<Total, 4>, 3> studies{};      // [truth][claim]
+    std::array<std::array<Total, 4>, 3> studies{};       // [truth][claim]
     std::array<std::array<double, 3>, 2> manuscripts{};  // [real][class]
-    std::array<double, 2> established{};  // [real]: questions with a finding in the scope
+    std::array<double, 2> established{};                 // [real]: questions with a finding in the scope
 };
 
 /// All metrics of all scopes whose denominator is not zero. `of_questions`: whether `established` counts

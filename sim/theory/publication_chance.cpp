@@ -15,9 +15,12 @@ void keep_each_once(std::vector<double>& cuts) {
 
 double by_class(double supportive, double mixed, double null, ManuscriptClass manuscript_class) {
     switch (manuscript_class) {
-        case ManuscriptClass::supportive: return supportive;
-        case ManuscriptClass::mixed: return mixed;
-        case ManuscriptClass::null: return null;
+        case ManuscriptClass::supportive:
+            return supportive;
+        case ManuscriptClass::mixed:
+            return mixed;
+        case ManuscriptClass::null:
+            return null;
     }
     throw Defect("by_class: unknown class");
 }

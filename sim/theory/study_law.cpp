@@ -67,13 +67,35 @@ void StudyLaw::add_size(const Science& science, std::uint32_t n, double weight, 
     for (std::size_t e = 0; e + 1 < ends.size(); ++e) {
         const double t = inside(ends[e], ends[e + 1]);
         Cell cell{Claim::inconclusive, passed(two, std::fabs(t)), passed(one, t), {}};
-        if (t > plan.critical) cell.claim = Claim::positive;
-        else if (design.sides == 2 && t < -plan.critical) cell.claim = Claim::reversed;
+        if (t > plan.critical)
+            cell.claim = Claim::positive;
+        else if (design.sides == 2 && t < -plan.critical)
+            cell.claim = Claim::reversed;
         cells.push_back(cell_of(cell));
     }
-    for (double& end : ends) end /= spread;
-    sizes_.push_back({PartitionedT(ends, plan.df), cells, plan.noncentrality / spread,
-                      spread * reported_estimate(design, plan, 1.0), weight});
+    for (double& end : ends) {
+        end /= spread;
+        if (std::isfinite(end)) largest_critical_ = std::max(largest_critical_, std::fabs(end));
+    }
+    const double noncentrality = plan.noncentrality / spread;
+    least_noncentrality_ = std::min(least_noncentrality_, noncentrality);
+    most_noncentrality_ = std::max(most_noncentrality_, noncentrality);
+    sizes_.push_back(
+        {PartitionedT(ends, plan.df), cells, noncentrality, spread * reported_estimate(design, plan, 1.0), weight});
+}
+
+// As a function of the noncentrality a chance bends over a width of 1 or more, and is settled once it has
+// passed the critical values by 9. So at effect x, studies whose noncentrality l x has passed them do not
+// bend any more, and those that have not bend over 1 / l >= x / settled.
+std::vector<double> StudyLaw::bends() const {
+    constexpr double width = 4.0;  // of a piece, in units of the bend's width
+    const double settled = 1.5 * largest_critical_ + 9.0;
+    std::vector<double> bends{0.0};
+    for (double x = 0.0; x * least_noncentrality_ < settled;) {
+        x += width * std::max(1.0 / most_noncentrality_, x / settled);
+        bends.insert(bends.end(), {x, -x});
+    }
+    return bends;
 }
 
 std::vector<Cell> StudyLaw::cells(double effect) const {

@@ -41,6 +41,9 @@ public:
     /// How many integrals one call of cells() takes.
     std::size_t integrals() const { return sizes_.size(); }
 
+    /// Effects between which the chances of cells bend gently enough for one Gauss-Legendre piece.
+    std::vector<double> bends() const;
+
     /// All cells of positive chance; chances sum to 1.
     std::vector<Cell> cells(double effect) const;
 
@@ -57,6 +60,7 @@ private:
                   const std::vector<double>& cuts_one);
 
     std::vector<Size> sizes_;
+    double largest_critical_ = 0.0, least_noncentrality_ = infinity, most_noncentrality_ = 0.0;
     std::vector<Cell> blank_;  // every cell that occurs, with empty sums
 };
 

@@ -1,9 +1,9 @@
 #include "sim/theory/theory.h"
 
+#include <fmt/format.h>
+
 #include <algorithm>
 #include <cmath>
-
-#include <fmt/format.h>
 
 #include "sim/theory/line_totals.h"
 #include "sim/theory/metrics.h"
@@ -22,14 +22,17 @@ struct Effect {
     double value, chance;
 };
 
-std::vector<Effect> effects_of(const Field& field) {
+/// `bends`: where an integrand over effects may bend.
+std::vector<Effect> effects_of(const Field& field, std::vector<double> bends) {
+    // The truth of a question jumps at +-negligible, and its sign at zero.
+    bends.insert(bends.end(), {-field.negligible, 0.0, field.negligible});
     std::vector<Effect> effects;
     const auto add = [&](const Distribution& distribution, double share, bool real) {
         if (share <= 0.0) return;
-        // The truth of a question jumps at +-negligible, and its sign at zero.
-        for (const Node& node : quadrature(distribution, 120, {-field.negligible, 0.0, field.negligible})) {
+        for (const Node& node : quadrature(distribution, 120, bends)) {
             Truth truth = Truth::null;
-            if (real && std::fabs(node.x) > field.negligible) truth = node.x > 0.0 ? Truth::real : Truth::real_negative;
+            if (real && std::fabs(node.x) > field.negligible)
+                truth = node.x > 0.0 ? Truth::real : Truth::real_negative;
             effects.push_back({truth, node.x, share * node.weight});
         }
     };
@@ -71,8 +74,7 @@ bool one_line_a_question(const Science& science) {
     return labs * mean + 9.0 * std::sqrt(labs * variance) <= static_cast<double>(science.field.questions) + 1e-6;
 }
 
-void add_question(const LineTotals& line, const Effect& effect, double weight,
-                  std::array<ScopeTotals, 3>& totals) {
+void add_question(const LineTotals& line, const Effect& effect, double weight, std::array<ScopeTotals, 3>& totals) {
     const double orientation = effect.value < 0.0 ? -1.0 : 1.0;
     const std::size_t real = effect.truth != Truth::null;
     for (std::size_t s = 0; s < totals.size(); ++s) {
@@ -92,7 +94,6 @@ void add_question(const LineTotals& line, const Effect& effect, double weight,
 Theory expectations(const Regime& regime) {
     const Science& science = regime.science;
     const PublicationChance chance(regime.rules);
-    const std::vector<Effect> effects = effects_of(science.field);
     std::array<ScopeTotals, 3> totals{};
     double integrals = 0.0;
     for (const LabKind& kind : science.labs) {
@@ -102,6 +103,7 @@ Theory expectations(const Regime& regime) {
             return {{}, fmt::format("lab \"{}\" may run lines of more than {} studies", kind.name, longest_line)};
         }
         const StudyLaw law(science, kind, chance.cuts_two(), chance.cuts_one());
+        const std::vector<Effect> effects = effects_of(science.field, law.bends());
         integrals += static_cast<double>(law.integrals()) * static_cast<double>(effects.size());
         if (integrals > most_integrals) {
             return {{}, "there are too many combinations of effect, study size and p step to go through"};
