@@ -2,6 +2,8 @@
 
 #include <fmt/format.h>
 
+#include <algorithm>
+
 #include "sim/config/utf8.h"
 
 namespace lacuna {
@@ -78,13 +80,6 @@ private:
         report("a table header needs a key", "as in [field] or [[journal]]");
     }
 
-    /// What follows a backslash, or the line end after it, is looked at as white space.
-    void check_escape() {
-        const std::size_t next = text_.find_first_not_of(" \t\r\n", at_);
-        const bool is_ascii = next == std::string_view::npos || static_cast<unsigned char>(text_[next]) < 0x80u;
-        if (!is_ascii) report("a backslash must not stand before this character", "write \\\\ for a backslash");
-    }
-
     void skip_string(char quote) {
         const Place opening = place_;
         const std::string three(3, quote);
@@ -98,10 +93,7 @@ private:
                 while (many_lines && at_ < text_.size() && text_[at_] == quote);
                 return;
             }
-            if (c == '\\' && quote == '"') {
-                advance();
-                check_escape();
-            }
+            if (c == '\\' && quote == '"') advance();
             if (at_ < text_.size() && !fault_ && (many_lines || text_[at_] != '\n')) advance();
         }
         if (fault_) return;

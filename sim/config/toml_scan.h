@@ -1,6 +1,6 @@
 // What is checked of a config's bytes before the TOML parser sees them. The parser (toml++ 3.3.0) has
-// undefined behaviour on malformed non-ASCII outside strings, fails assertions on headers without a key
-// and recurses with the depth of the text.
+// undefined behaviour on malformed UTF-8, fails assertions on headers without a key and recurses with the
+// depth of the text.
 #pragma once
 
 #include <optional>

@@ -191,6 +191,7 @@ TEST_CASE("regimes change copies of the config, by paths, tables and sections al
     const std::string text = R"(
 [field]
 true_rate = 0.5
+labs = 50
 [design]
 size = { plan = "fixed", n = 30 }
 [[journal]]
@@ -226,6 +227,7 @@ chance = { supportive = 1, mixed = 0.5, null = 0 }
     CHECK(regimes[1].rules.journals[1].results_blind_chance == 0.75);  // derived anew
     CHECK(regimes[2].science.field.true_rate == 0.25);
     CHECK(regimes[2].science.field.negligible == 0.125);
+    CHECK(regimes[2].science.field.labs == 50);  // a section in braces changes only what it names
     CHECK(regimes[2].science.design.size.kind == SizePlan::Kind::power);
     CHECK(regimes[3].science.field.true_rate == 0.25);
     CHECK(regimes[3].science.design.size.n == 40);
@@ -263,6 +265,7 @@ TEST_CASE("published-rates.toml is the field of the baseline script") {
 
 TEST_CASE("a byte order mark and Windows line ends are no faults") {
     CHECK(parse("\xEF\xBB\xBF[run]\r\nseed = 3\r\n").run.seed == 3);
+    CHECK(parse("title = \"\"\"\\\n  \u00c4cker\"\"\"\n").title == "\u00c4cker");  // as TOML 1.0 trims lines
 }
 
 TEST_CASE("a config that cannot be read is one clear fault") {

@@ -39,8 +39,8 @@ TEST_CASE("Power of two means (reference/power_t.csv)", "[design]") {
 TEST_CASE("Power of two means of unequal sizes (reference/power_t_unequal.csv)", "[design]") {
     for (const auto& row : oracle::read_reference("power_t_unequal.csv").rows) {
         const Design design = make(Test::two_means, number(row, "alpha"), std::stoi(row.at("sides")));
-        TestPlan plan = two_means::plan({static_cast<std::uint32_t>(number(row, "n1")),
-                                         static_cast<std::uint32_t>(number(row, "n2"))});
+        TestPlan plan = two_means::plan(
+            {static_cast<std::uint32_t>(number(row, "n1")), static_cast<std::uint32_t>(number(row, "n2"))});
         plan.critical = critical_value(design.test, plan.df, design.alpha, design.sides);
         INFO("n1 " << plan.size.n1 << " n2 " << plan.size.n2 << " d " << row.at("d"));
         CHECK(power(design, plan, number(row, "d")) == Approx(number(row, "power")).margin(1e-8).epsilon(0));
@@ -57,7 +57,8 @@ TEST_CASE("Planned n of two means (reference/power_published_n.csv: Cohen 1988, 
         INFO("d " << d << " alpha " << design.alpha << " sides " << design.sides << " power " << target);
         const std::uint32_t n = planned_n(design, target, d);
         CHECK(n == number(row, "n_exact"));
-        CHECK(power(design, describe(design, n), d) == Approx(number(row, "power_at_n_exact")).margin(1e-8).epsilon(0));
+        CHECK(power(design, describe(design, n), d) ==
+              Approx(number(row, "power_at_n_exact")).margin(1e-8).epsilon(0));
         CHECK(std::fabs(n - number(row, "n_published")) <= 2.0);  // Cohen's tables rest on approximations
     }
     CHECK(rows == 14);

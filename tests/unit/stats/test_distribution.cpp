@@ -13,8 +13,9 @@ namespace {
 
 Family family_of(const std::string& name) {
     static const std::map<std::string, Family> families{
-        {"normal", Family::normal}, {"half_normal", Family::half_normal}, {"lognormal", Family::lognormal},
-        {"gamma", Family::gamma},   {"beta", Family::beta},               {"uniform", Family::uniform},
+        {"normal", Family::normal},       {"half_normal", Family::half_normal},
+        {"lognormal", Family::lognormal}, {"gamma", Family::gamma},
+        {"beta", Family::beta},           {"uniform", Family::uniform},
         {"poisson", Family::poisson}};
     return families.at(name);
 }
@@ -63,8 +64,8 @@ TEST_CASE("Distributions agree with SciPy", "[stats]") {
                                     number(row, "min"), number(row, "max"), row.at("clamp") == "1");
         const std::string& quantity = row.at("quantity");
         const double value = number(row, "value");
-        INFO(row.at("family") << ' ' << d.first << ' ' << d.second << " in " << d.min << " .. " << d.max << " clamp "
-                              << d.clamp << ": " << quantity << ' ' << row.at("argument"));
+        INFO(row.at("family") << ' ' << d.first << ' ' << d.second << " in " << d.min << " .. " << d.max
+                              << " clamp " << d.clamp << ": " << quantity << ' ' << row.at("argument"));
         if (quantity == "mass") CHECK(mass_inside(d) == Approx(value).epsilon(1e-9));
         if (quantity == "mean") {
             CHECK(mean(d) == Approx(value).epsilon(1e-10));
@@ -87,8 +88,10 @@ TEST_CASE("Sizes floored after clamping keep the bounds' atoms", "[stats]") {
     CHECK(integers.first == 8);
     REQUIRE(integers.chance.size() == 193);
     // P(X < 9) and P(X >= 200) of the lognormal, by the error function.
-    CHECK(integers.chance[0] == Approx(0.5 * std::erfc(-std::log(9.0 / 25.0) / 0.5 / std::sqrt(2.0))).epsilon(1e-13));
-    CHECK(integers.chance[192] == Approx(0.5 * std::erfc(std::log(200.0 / 25.0) / 0.5 / std::sqrt(2.0))).epsilon(1e-12));
+    CHECK(integers.chance[0] ==
+          Approx(0.5 * std::erfc(-std::log(9.0 / 25.0) / 0.5 / std::sqrt(2.0))).epsilon(1e-13));
+    CHECK(integers.chance[192] ==
+          Approx(0.5 * std::erfc(std::log(200.0 / 25.0) / 0.5 / std::sqrt(2.0))).epsilon(1e-12));
 }
 
 TEST_CASE("Rounding to nearest takes halves up", "[stats]") {
@@ -112,8 +115,8 @@ TEST_CASE("Support of rounded values is cut at 2^-60 and refused beyond `most`",
 }
 
 TEST_CASE("Clamping onto a bound beyond all mass leaves one atom", "[stats]") {
-    for (const Distribution& d : {make(Family::uniform, 0.0, 1.0, 5.0, 9.0, true),
-                                  make(Family::uniform, 10.0, 11.0, 2.0, 5.0, true)}) {
+    for (const Distribution& d :
+         {make(Family::uniform, 0.0, 1.0, 5.0, 9.0, true), make(Family::uniform, 10.0, 11.0, 2.0, 5.0, true)}) {
         CHECK(is_constant(d));
         CHECK(mean(d) == 5.0);
         CHECK(quantile(d, 0.5) == 5.0);

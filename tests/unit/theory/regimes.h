@@ -9,7 +9,8 @@
 namespace lacuna {
 
 /// One lab kind that runs one line of one study of size n per question, everything published.
-inline Regime one_study_regime(Test test, std::uint32_t n, double effect, double true_rate, double alpha, int sides) {
+inline Regime one_study_regime(Test test, std::uint32_t n, double effect, double true_rate, double alpha,
+                               int sides) {
     Regime regime;
     regime.science.field.effect = Distribution::fixed(effect);
     regime.science.field.true_rate = true_rate;

@@ -57,7 +57,8 @@ TEST_CASE("False discovery rate by power, alpha and true rate (Ioannidis 2005; r
         }
         regime.science.field.effect = Distribution::fixed(high);
         const Theory theory = expectations(regime);
-        CHECK(value_of(theory, "false_discovery_rate", "published").value() == Approx(number(row, "fdr")).epsilon(1e-9));
+        CHECK(value_of(theory, "false_discovery_rate", "published").value() ==
+              Approx(number(row, "fdr")).epsilon(1e-9));
         CHECK(value_of(theory, "power", "conducted").value() == Approx(target).epsilon(1e-11));
         CHECK(value_of(theory, "type1_error", "conducted").value() == Approx(alpha).epsilon(1e-11));
     }
@@ -66,8 +67,8 @@ TEST_CASE("False discovery rate by power, alpha and true rate (Ioannidis 2005; r
 TEST_CASE("A weighted filter of z values (reference/publication_filter_normal.csv)", "[theory]") {
     for (const auto& row : oracle::read_reference("publication_filter_normal.csv").rows) {
         const double theta = number(row, "theta"), alpha = number(row, "alpha");
-        INFO("theta " << theta << " alpha " << alpha << " weights " << row.at("w_pos") << ' ' << row.at("w_neg") << ' '
-                      << row.at("w_ns"));
+        INFO("theta " << theta << " alpha " << alpha << " weights " << row.at("w_pos") << ' ' << row.at("w_neg")
+                      << ' ' << row.at("w_ns"));
         Regime regime = one_study_regime(Test::known_variance, 1, theta, 1.0, alpha, 2);
         regime.rules.journals = {
             by_direction(alpha, number(row, "w_pos"), number(row, "w_ns"), number(row, "w_neg"))};
@@ -77,8 +78,10 @@ TEST_CASE("A weighted filter of z values (reference/publication_filter_normal.cs
         };
         is("publication_rate", number(row, "p_publish"));
         is("positive_share", number(row, "frac_sig_published"));
-        if (theta > 0.0) is("effect_bias_reports", number(row, "bias"));
-        else CHECK_FALSE(value_of(theory, "effect_bias_reports", "published").has_value());
+        if (theta > 0.0)
+            is("effect_bias_reports", number(row, "bias"));
+        else
+            CHECK_FALSE(value_of(theory, "effect_bias_reports", "published").has_value());
     }
 }
 

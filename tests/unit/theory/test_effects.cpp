@@ -25,12 +25,50 @@ double above(double c, double mean, double variance) { return normal_lower((mean
 
 TEST_CASE("With known variance, normal effects and deviations add up to a normal statistic", "[theory]") {
     // Z = sqrt(n) (effect + deviation) + error: variance 1 + n (sd^2 + tau^2).
-    Regime regime = one_study_regime(Test::known_variance, 9, 0.0, 1.0, 0.05, 2);
-    regime.science.field.effect = normal(0.3, 0.2);
-    regime.science.field.heterogeneity = 0.1;
-    const double c = normal_critical(0.025), variance = 1.0 + 9.0 * 0.05;
-    const double power = above(c, 0.9, variance) + above(c, -0.9, variance);
-    CHECK(value_of(expectations(regime), "power", "conducted").value() == Approx(power).epsilon(1e-10));
+    const double c = normal_critical(0.025);
+    for (const std::uint32_t n : {1u, 9u, 400u, 250000u}) {
+        for (const double sd : {0.01, 0.2, 3.0}) {
+            for (const double tau : {0.0, 0.1}) {
+                INFO("n " << n << " sd " << sd << " tau " << tau);
+                Regime regime = one_study_regime(Test::known_variance, n, 0.0, 1.0, 0.05, 2);
+                regime.science.field.effect = normal(0.3, sd);
+                regime.science.field.heterogeneity = tau;
+                const double shift = 0.3 * std::sqrt(n), variance = 1.0 + n * (sd * sd + tau * tau);
+                const double power = above(c, shift, variance) + above(c, -shift, variance);
+                CHECK(value_of(expectations(regime), "power", "conducted").value() == Approx(power).epsilon(1e-10));
+            }
+        }
+    }
+}
+
+TEST_CASE("Uniform effects of very unequal studies: the mean of a chance over its noncentrality", "[theory]") {
+    // Integral of Phi(l x - c) over x in (-2, 2), one-sided: [u Phi(u) + phi(u)] / l at u = +-2 l - c.
+    Regime regime = one_study_regime(Test::known_variance, 1, 0.0, 1.0, 0.001, 1);
+    regime.science.field.effect.family = Family::uniform;
+    regime.science.field.effect.first = -2.0;
+    regime.science.field.effect.second = 2.0;
+    SizePlan& size = regime.science.labs[0].size;
+    size.kind = SizePlan::Kind::distribution;
+    size.distribution.family = Family::discrete;
+    size.distribution.values = {1.0, 50.0, 4000.0};
+    size.distribution.weights = {1.0, 2.0, 1.0};
+    const double c = normal_critical(0.001);
+    const auto integral = [&](double n) {
+        const double l = std::sqrt(n);
+        const auto at = [](double u) { return u * normal_lower(u) + normal_density(u); };
+        return (at(2.0 * l - c) - at(-2.0 * l - c)) / (4.0 * l);
+    };
+    size.distribution.weights = {1.0, 0.0, 0.0};
+    CHECK(value_of(expectations(regime), "power", "conducted").value() == Approx(integral(1.0)).epsilon(1e-10));
+    size.distribution.weights = {0.0, 1.0, 0.0};
+    CHECK(value_of(expectations(regime), "power", "conducted").value() == Approx(integral(50.0)).epsilon(1e-10));
+    size.distribution.values = {2.0, 50.0, 80.0};
+    size.distribution.weights = {1.0, 2.0, 1.0};
+    const double mixed = 0.25 * integral(2.0) + 0.5 * integral(50.0) + 0.25 * integral(80.0);
+    CHECK(value_of(expectations(regime), "power", "conducted").value() == Approx(mixed).epsilon(1e-10));
+    size.distribution.values = {1.0, 50.0, 4000.0};
+    const double unequal = 0.25 * integral(1.0) + 0.5 * integral(50.0) + 0.25 * integral(4000.0);
+    CHECK(value_of(expectations(regime), "power", "conducted").value() == Approx(unequal).epsilon(1e-10));
 }
 
 TEST_CASE("Heterogeneity of t studies is an average over their true effects", "[theory]") {
@@ -113,8 +151,10 @@ TEST_CASE("Manuscripts and questions where studies are all three", "[theory]") {
     for (const char* scope : {"conducted", "published"}) {
         const Theory theory = expectations(regime);
         const double of_studies = value_of(theory, "false_discovery_rate", scope).value();
-        CHECK(value_of(theory, "false_discovery_rate_manuscripts", scope).value() == Approx(of_studies).epsilon(1e-14));
-        CHECK(value_of(theory, "false_discovery_rate_questions", scope).value() == Approx(of_studies).epsilon(1e-14));
+        CHECK(value_of(theory, "false_discovery_rate_manuscripts", scope).value() ==
+              Approx(of_studies).epsilon(1e-14));
+        CHECK(value_of(theory, "false_discovery_rate_questions", scope).value() ==
+              Approx(of_studies).epsilon(1e-14));
     }
     // Three studies a line: a null question is established with chance 1 - .95^3.
     regime.science.labs[0].studies.count = 3;
@@ -131,7 +171,9 @@ TEST_CASE("Manuscripts and questions where studies are all three", "[theory]") {
 
 TEST_CASE("g is d times its correction", "[theory]") {
     Regime regime = one_study_regime(Test::two_means, 2, 0.8, 1.0, 0.05, 2);
-    const auto all_reports = [&] { return value_of(expectations(regime), "effect_inflation_reports", "conducted").value(); };
+    const auto all_reports = [&] {
+        return value_of(expectations(regime), "effect_inflation_reports", "conducted").value();
+    };
     // E[d] = delta / J(2), J(2) = 1 / sqrt(pi).
     CHECK(all_reports() == Approx(std::sqrt(M_PI)).epsilon(1e-12));
     regime.science.design.estimate = EffectEstimate::g;

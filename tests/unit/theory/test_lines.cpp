@@ -19,9 +19,9 @@ LineRule rule(LineRule::Kind kind, std::uint32_t count, std::uint32_t failures =
 
 /// Results of a study: claims at several levels, chances summing to 1.
 std::vector<Cell> some_cells() {
-    return {{Claim::positive, 2, 2, {0.15, 0.12, 0.12}},       {Claim::positive, 1, 1, {0.2, 0.1, 0.1}},
-            {Claim::inconclusive, 0, 1, {0.1, 0.02, 0.02}},    {Claim::inconclusive, 0, 0, {0.4, -0.02, 0.06}},
-            {Claim::reversed, 1, 0, {0.09, -0.05, 0.05}},      {Claim::reversed, 2, 0, {0.06, -0.05, 0.05}}};
+    return {{Claim::positive, 2, 2, {0.15, 0.12, 0.12}},    {Claim::positive, 1, 1, {0.2, 0.1, 0.1}},
+            {Claim::inconclusive, 0, 1, {0.1, 0.02, 0.02}}, {Claim::inconclusive, 0, 0, {0.4, -0.02, 0.06}},
+            {Claim::reversed, 1, 0, {0.09, -0.05, 0.05}},   {Claim::reversed, 2, 0, {0.06, -0.05, 0.05}}};
 }
 
 Journal by_p(std::vector<double> steps, std::vector<double> chance, int sides) {
@@ -162,9 +162,12 @@ TEST_CASE("Line totals agree with a walk through every course", "[theory]") {
                             INFO("rule " << int(its.kind) << " unit " << int(unit) << " findings " << int(findings)
                                          << " attempts " << attempts << " scope " << s << " claim " << c);
                             CHECK(got.manuscripts[s][c] == Approx(walk.totals.manuscripts[s][c]).epsilon(1e-12));
-                            CHECK(got.studies[s][c].studies == Approx(walk.totals.studies[s][c].studies).epsilon(1e-12));
-                            CHECK(got.studies[s][c].estimate == Approx(walk.totals.studies[s][c].estimate).margin(1e-14));
-                            CHECK(got.studies[s][c].abs_estimate == Approx(walk.totals.studies[s][c].abs_estimate).epsilon(1e-12));
+                            CHECK(got.studies[s][c].studies ==
+                                  Approx(walk.totals.studies[s][c].studies).epsilon(1e-12));
+                            CHECK(got.studies[s][c].estimate ==
+                                  Approx(walk.totals.studies[s][c].estimate).margin(1e-14));
+                            CHECK(got.studies[s][c].abs_estimate ==
+                                  Approx(walk.totals.studies[s][c].abs_estimate).epsilon(1e-12));
                         }
                     }
                 }
