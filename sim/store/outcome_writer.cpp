@@ -1,0 +1,211 @@
+#include "sim/store/outcome_writer.h"
+
+#include <fmt/format.h>
+#include <unistd.h>
+
+#include <algorithm>
+#include <cerrno>
+#include <cstring>
+#include <filesystem>
+#include <optional>
+
+#include "sim/store/attributes.h"
+#include "sim/store/column_writer.h"
+
+namespace lacuna {
+
+namespace {
+
+namespace fs = std::filesystem;
+
+constexpr std::uint64_t bytes_a_dataset = 4096;  // of metadata, generously
+constexpr std::uint64_t bytes_a_file = 65536;
+
+[[noreturn]] void refuse(const std::string& path, std::string message, std::string remedy) {
+    Fault fault;
+    fault.place.source = path;
+    fault.message = std::move(message);
+    fault.remedy = std::move(remedy);
+    throw InputError(std::move(fault));
+}
+
+/// File creation without time stamps, so that equal runs are equal bytes.
+Handle create_file(const std::string& path) {
+    const Handle creation = checked(H5Pcreate(H5P_FILE_CREATE), H5Pclose, path);
+    check(H5Pset_obj_track_times(creation.id(), false), path);
+    const Handle access = checked(H5Pcreate(H5P_FILE_ACCESS), H5Pclose, path);
+    // Small tables have many columns; the newer layout keeps each one's overhead to a few hundred bytes.
+    check(H5Pset_libver_bounds(access.id(), H5F_LIBVER_V110, H5F_LIBVER_V110), path);
+    check(H5Pset_fclose_degree(access.id(), H5F_CLOSE_STRONG), path);
+    return checked(H5Fcreate(path.c_str(), H5F_ACC_TRUNC, creation.id(), access.id()), H5Fclose, "cannot create " + path);
+}
+
+void create_group(hid_t file, const std::string& name) {
+    const Handle properties = checked(H5Pcreate(H5P_GROUP_CREATE), H5Pclose, name);
+    check(H5Pset_obj_track_times(properties.id(), false), name);
+    checked(H5Gcreate2(file, name.c_str(), H5P_DEFAULT, properties.id(), H5P_DEFAULT), H5Gclose, name);
+}
+
+std::string parent_of(const std::string& path) {
+    const fs::path parent = fs::path(path).parent_path();
+    return parent.empty() ? "." : parent.string();
+}
+
+}  // namespace
+
+void check_output(const std::string& path, bool overwrite) {
+    std::error_code error;
+    if (path.empty()) refuse("-o", "an output file needs a name", "give one with -o");
+    const fs::file_status status = fs::status(path, error);
+    if (fs::is_directory(status)) refuse(path, "is a directory", "give a file name with -o");
+    if (fs::exists(status) && !overwrite) {
+        refuse(path, "is there already", "give --overwrite to replace it, or another name with -o");
+    }
+    if (fs::exists(status) && !fs::is_regular_file(status)) refuse(path, "is not a regular file", "give another name with -o");
+    const std::string parent = parent_of(path);
+    if (!fs::is_directory(parent, error)) refuse(path, fmt::format("there is no directory {}", parent), "make it first");
+    if (::access(parent.c_str(), W_OK | X_OK) != 0) {
+        refuse(path, fmt::format("cannot write in {}: {}", parent, std::strerror(errno)), "write elsewhere with -o");
+    }
+}
+
+class OutcomeWriter::File {
+public:
+    File(const std::string& path, const FileFacts& facts, std::vector<TableSpec> tables, bool compress, ParallelFor loop)
+        : path_(path),
+          partial_(fmt::format("{}.partial-{}", path, ::getpid())),
+          compress_(compress),
+          parallel_for_(std::move(loop)) {
+        silence_hdf5();
+        file_ = create_file(partial_);
+        try {
+            open(facts, std::move(tables));
+        } catch (...) {
+            abandon();
+            throw;
+        }
+    }
+
+    ~File() { abandon(); }
+
+    const std::string& partial() const { return partial_; }
+
+    void append(const std::string& name, const Batch& rows) {
+        const auto at = std::find_if(tables_.begin(), tables_.end(), [&](const Table& t) { return t.spec.name == name; });
+        if (at == tables_.end()) throw Defect("OutcomeWriter: no table " + name);
+        lacuna::append(at->waiting, rows);
+        const std::size_t whole = at->waiting.rows / chunk_rows;
+        if (whole == 0) return;
+        write_rows(*at, whole * chunk_rows, chunk_rows);
+        drop_front(at->waiting, whole * chunk_rows);
+    }
+
+    void finish(bool complete, std::uint64_t done, std::uint64_t planned) {
+        for (Table& table : tables_) {
+            write_rows(table, table.waiting.rows, ColumnWriter::rows_of_chunk(table.created ? chunk_rows : table.waiting.rows));
+        }
+        reservation_->grow(bytes_a_file);
+        write_integer(file_.id(), "complete", complete ? 1 : 0);
+        write_text(file_.id(), "literatures_done", std::to_string(done));
+        write_text(file_.id(), "literatures_planned", std::to_string(planned));
+        tables_.clear();
+        if (!file_.close()) throw RunError(fmt::format("cannot write {}: {}", partial_, hdf5_reason()));
+        reservation_->release_rest();
+        reservation_->sync();
+        reservation_.reset();
+        std::error_code error;
+        fs::rename(partial_, path_, error);
+        if (error) throw RunError(fmt::format("cannot rename {} to {}: {}", partial_, path_, error.message()));
+        placed_ = true;
+    }
+
+private:
+    struct Table {
+        TableSpec spec;
+        std::vector<ColumnWriter> columns;
+        Batch waiting;
+        bool created = false;
+    };
+
+    void open(const FileFacts& facts, std::vector<TableSpec> tables) {
+        reservation_.emplace(partial_);
+        std::uint64_t text = bytes_a_file;
+        for (const FactName& fact : fact_names) text += (facts.*fact.member).size();
+        reservation_->grow(text);
+        write_text(file_.id(), "format", outcome_format);
+        write_integer(file_.id(), "format_version", outcome_format_version);
+        for (const FactName& fact : fact_names) write_text(file_.id(), fact.name, facts.*fact.member);
+        for (TableSpec& spec : tables) {
+            create_group(file_.id(), spec.name);
+            Table table{spec, {}, empty_batch(spec)};
+            for (const ColumnSpec& column : spec.columns) {
+                table.columns.emplace_back(spec.name + '/' + column.name, column, compress_);
+            }
+            tables_.push_back(std::move(table));
+        }
+    }
+
+    /// Encodes and writes the first `rows` waiting rows of a table in chunks; all columns have as many.
+    void write_rows(Table& table, std::size_t rows, std::size_t rows_in_chunk) {
+        const std::size_t chunks = (rows + rows_in_chunk - 1) / rows_in_chunk;
+        const std::size_t columns = table.columns.size();
+        std::vector<EncodedChunk> encoded(chunks * columns);
+        parallel_for_(encoded.size(), [&](std::size_t job) {
+            const std::size_t first = job / columns * rows_in_chunk;
+            encoded[job] = encode_chunk(table.waiting.columns[job % columns], first, std::min(rows_in_chunk, rows - first),
+                                        rows_in_chunk, compress_);
+        });
+        std::uint64_t bytes = table.created ? 0 : columns * bytes_a_dataset;
+        for (const EncodedChunk& chunk : encoded) bytes += chunk.bytes.size() + 64;
+        reservation_->grow(bytes);
+        if (!table.created) {
+            for (ColumnWriter& column : table.columns) column.create(file_.id(), rows_in_chunk, rows_in_chunk == chunk_rows);
+            table.created = true;
+        }
+        for (std::size_t job = 0; job < encoded.size(); ++job) {
+            const std::size_t first = job / columns * rows_in_chunk;
+            table.columns[job % columns].write(encoded[job], std::min(rows_in_chunk, rows - first));
+        }
+    }
+
+    static void drop_front(Batch& batch, std::size_t rows) {
+        for (ColumnData& column : batch.columns) {
+            std::visit([&](auto& values) { values.erase(values.begin(), values.begin() + static_cast<std::ptrdiff_t>(rows)); },
+                       column);
+        }
+        batch.rows -= rows;
+    }
+
+    void abandon() noexcept {
+        tables_.clear();
+        file_.reset();
+        reservation_.reset();
+        if (!placed_) ::unlink(partial_.c_str());
+    }
+
+    std::string path_, partial_;
+    bool compress_;
+    ParallelFor parallel_for_;
+    Handle file_;
+    std::optional<Reservation> reservation_;
+    std::vector<Table> tables_;
+    bool placed_ = false;
+};
+
+OutcomeWriter::OutcomeWriter(const std::string& path, bool overwrite, const FileFacts& facts,
+                             std::vector<TableSpec> tables, bool compress, ParallelFor parallel_for) {
+    check_output(path, overwrite);
+    file_ = std::make_unique<File>(path, facts, std::move(tables), compress, std::move(parallel_for));
+}
+
+OutcomeWriter::~OutcomeWriter() = default;
+
+void OutcomeWriter::append(const std::string& table, const Batch& rows) { file_->append(table, rows); }
+
+void OutcomeWriter::finish(bool complete, std::uint64_t literatures_done, std::uint64_t literatures_planned) {
+    file_->finish(complete, literatures_done, literatures_planned);
+}
+
+const std::string& OutcomeWriter::partial_path() const { return file_->partial(); }
+
+}  // namespace lacuna
