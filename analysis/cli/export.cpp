@@ -23,11 +23,15 @@ constexpr std::size_t rows_at_once = 16384;
 
 void prepare_directory(const fs::path& directory, bool overwrite) {
     std::error_code error;
-    const bool filled = fs::exists(directory, error) && !(fs::is_directory(directory, error) && fs::is_empty(directory, error));
-    if (filled && (!overwrite || !fs::is_directory(directory, error))) {
-        const char* remedy = fs::is_directory(directory, error) ? "give --overwrite, or another directory"
-                                                                : "give another directory";
-        throw InputError(Fault{{"command line", 0, 0}, "--output", fmt::format("'{}' is there already", directory.string()), remedy});
+    const bool usable = fs::is_directory(directory, error);
+    const bool filled = usable ? !fs::is_empty(directory, error) : fs::exists(directory, error);
+    if (filled && !(usable && overwrite)) {
+        Fault fault;
+        fault.place.source = "command line";
+        fault.key = "--output";
+        fault.message = fmt::format("'{}' {}", directory.string(), usable ? "is not empty" : "is not a directory");
+        fault.remedy = usable ? "give --overwrite, or another directory" : "give another name";
+        throw InputError(fault);
     }
     fs::create_directories(directory, error);
     if (error) throw RunError(fmt::format("cannot make the directory {}: {}", directory.string(), error.message()));

@@ -3,5 +3,5 @@
 
 int main(int count, char** arguments) {
     lacuna::ignore_write_signals();
-    return lacuna::run_lacuna(count, arguments, {LACUNA_VERSION, LACUNA_COMMIT, LACUNA_LIBRARIES});
+    return lacuna::run_lacuna(count, arguments, {LACUNA_VERSION, LACUNA_COMMIT, LACUNA_LIBRARIES, LACUNA_FLAGS});
 }

@@ -4,7 +4,7 @@
 #include <string>
 
 #include "analysis/cli/run_results.h"
-#include "sim/store/reader.h"
+#include "sim/store/outcome_reader.h"
 
 namespace lacuna {
 

@@ -8,23 +8,32 @@
 #include "analysis/cli/build_facts.h"
 #include "sim/model/scenario.h"
 #include "sim/model/tables.h"
-#include "sim/store/writer.h"
+#include "sim/store/outcome_writer.h"
 
 namespace lacuna {
 
 class Recording {
 public:
-    /// Checks that `path` can be written before anything is simulated.
+    /// Opens the file before anything is simulated; throws as OutcomeWriter does.
     Recording(const std::string& path, bool overwrite, const Scenario& scenario, const std::string& config_text,
               const BuildFacts& build);
 
     void add_literature(std::uint32_t literature, const std::vector<std::vector<double>>& rows);
-    void add_rows(const std::string& table, Batch&& batch);
-    /// Writes what is pending and puts the file in place. `complete`: the run was not stopped early.
-    void finish(bool complete);
+    void add_rows(const std::string& table, const Batch& batch) { writer_.append(table, batch); }
+    /// Writes what is pending and puts the file in place. `literatures`: how many are complete.
+    void finish(bool complete, std::uint64_t literatures);
 
     const std::string& digest() const { return digest_; }
-    const std::string& partial_file() const;
+    const std::string& partial_path() const { return writer_.partial_path(); }
+
+private:
+    void flush();
+
+    std::string digest_;
+    std::uint64_t planned_;
+    TableSpec literatures_;
+    Batch pending_;
+    OutcomeWriter writer_;
 };
 
 }  // namespace lacuna

@@ -61,7 +61,7 @@ RunOutcome simulate_into(Recording& recording, Accumulator& accumulator, const S
         accumulator.add(rows);
         recording.add_literature(literature, rows);
     };
-    sinks.rows = [&](const std::string& table, Batch&& batch) { recording.add_rows(table, std::move(batch)); };
+    sinks.rows = [&](const std::string& table, Batch&& batch) { recording.add_rows(table, batch); };
     try {
         const RunOutcome outcome = simulate(scenario, how, sinks);
         line.erase();
@@ -82,9 +82,9 @@ int run_command(const Options& options, const BuildFacts& build) {
     Recording recording(path, options.overwrite, scenario, read_config_text(options.input), build);
     RunOutcome outcome;
     {
-        const Interrupt interrupt(recording.partial_file());
+        const Interrupt interrupt(recording.partial_path());
         outcome = simulate_into(recording, accumulator, scenario, options, interrupt);
-        recording.finish(!outcome.stopped);
+        recording.finish(!outcome.stopped, outcome.literatures);
     }
     const double seconds = steady_seconds() - start;
     print_results(results_of(accumulator, scenario, recording.digest()), options.format, build);

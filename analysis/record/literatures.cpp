@@ -12,7 +12,7 @@ namespace lacuna {
 namespace {
 
 /// Doubles held at a time; a table of any width is read in stretches of about this size.
-constexpr std::size_t doubles_at_once = 1u << 20;
+constexpr std::size_t doubles_at_once = 1u << 22;
 
 void check_columns(const std::vector<ColumnSpec>& found, const std::string& path, const TableSpec& expected) {
     for (const ColumnSpec& column : expected.columns) {

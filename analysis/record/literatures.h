@@ -6,7 +6,7 @@
 #include <vector>
 
 #include "sim/model/tables.h"
-#include "sim/store/reader.h"
+#include "sim/store/outcome_reader.h"
 
 namespace lacuna {
 

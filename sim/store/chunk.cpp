@@ -1,10 +1,9 @@
 #include "sim/store/chunk.h"
 
-#include <libdeflate.h>
+#include <isa-l/igzip_lib.h>
 
 #include <algorithm>
 #include <cstring>
-#include <memory>
 
 #include "sim/base/fault.h"
 
@@ -12,19 +11,8 @@ namespace lacuna {
 
 namespace {
 
-constexpr int deflate_level = 1;           // the fastest; higher levels gain a few percent on random doubles
 constexpr std::size_t sample_bytes = 16384; // tried first, to tell what cannot be compressed
 constexpr double worth_it = 0.92;          // keep the compressed form below this share of the raw one
-
-struct Compressor {
-    libdeflate_compressor* self = libdeflate_alloc_compressor(deflate_level);
-    Compressor() {
-        if (self == nullptr) throw RunError("no memory for compression");
-    }
-    Compressor(const Compressor&) = delete;
-    Compressor& operator=(const Compressor&) = delete;
-    ~Compressor() { libdeflate_free_compressor(self); }
-};
 
 /// The bytes of a chunk's values, the first of each, then the second of each, and so on.
 std::vector<unsigned char> shuffled(const std::vector<unsigned char>& raw, std::size_t size) {
@@ -38,11 +26,22 @@ std::vector<unsigned char> shuffled(const std::vector<unsigned char>& raw, std::
     return out;
 }
 
-/// Deflated bytes, empty when they would not be smaller than `most`.
-std::vector<unsigned char> deflated(Compressor& compressor, const unsigned char* from, std::size_t size,
-                                    std::size_t most) {
-    std::vector<unsigned char> out(most);
-    out.resize(libdeflate_zlib_compress(compressor.self, from, size, out.data(), most));
+/// Deflated bytes (zlib format, ISA-L's level 1), empty when they would not be smaller than `most`.
+std::vector<unsigned char> deflated(const std::vector<unsigned char>& from, std::size_t most) {
+    std::vector<unsigned char> out(most), work(ISAL_DEF_LVL1_DEFAULT);
+    isal_zstream stream;
+    isal_deflate_stateless_init(&stream);
+    stream.end_of_stream = 1;
+    stream.flush = NO_FLUSH;
+    stream.gzip_flag = IGZIP_ZLIB;
+    stream.level = 1;
+    stream.level_buf = work.data();
+    stream.level_buf_size = static_cast<std::uint32_t>(work.size());
+    stream.next_in = const_cast<unsigned char*>(from.data());  // read only, in an interface without const
+    stream.avail_in = static_cast<std::uint32_t>(from.size());
+    stream.next_out = out.data();
+    stream.avail_out = static_cast<std::uint32_t>(out.size());
+    out.resize(isal_deflate_stateless(&stream) == COMP_OK ? stream.total_out : 0);
     return out;
 }
 
@@ -76,16 +75,15 @@ EncodedChunk encode_chunk(const ColumnData& column, std::size_t first, std::size
     if (!compress) return {std::move(raw), 0};
     const bool shuffle = column.index() != 0;
     const std::uint32_t skip_all = shuffle ? 0b11u : 0b1u;
-    Compressor compressor;
     // Of a mantissa full of noise only a byte or two compress; the sample shows it at a tenth of the cost.
     const std::size_t size = raw.size() / rows;
     const std::size_t sampled = std::min(raw.size(), sample_bytes) / size * size;
     const std::vector<unsigned char> head(raw.begin(), raw.begin() + static_cast<std::ptrdiff_t>(sampled));
-    const auto limit = [](std::size_t bytes) { return std::max<std::size_t>(16, static_cast<std::size_t>(worth_it * static_cast<double>(bytes))); };
+    const auto limit = [](std::size_t bytes) { return std::max<std::size_t>(64, static_cast<std::size_t>(worth_it * static_cast<double>(bytes))); };
     const std::vector<unsigned char> sample = shuffle ? shuffled(head, size) : head;
-    if (deflated(compressor, sample.data(), sample.size(), limit(sample.size())).empty()) return {std::move(raw), skip_all};
+    if (deflated(sample, limit(sample.size())).empty()) return {std::move(raw), skip_all};
     const std::vector<unsigned char> sorted = shuffle ? shuffled(raw, size) : raw;
-    std::vector<unsigned char> packed = deflated(compressor, sorted.data(), sorted.size(), limit(sorted.size()));
+    std::vector<unsigned char> packed = deflated(sorted, limit(sorted.size()));
     if (packed.empty()) return {std::move(raw), skip_all};
     return {std::move(packed), 0};
 }

@@ -10,7 +10,7 @@ namespace {
 
 Invocation parse(std::vector<const char*> arguments) {
     arguments.insert(arguments.begin(), "lacuna");
-    return parse_arguments(static_cast<int>(arguments.size()), arguments.data(), {"1.2.3", "abc", "HDF5 1"});
+    return parse_arguments(static_cast<int>(arguments.size()), arguments.data(), {"1.2.3", "abc", "HDF5 1", "-O3"});
 }
 
 }  // namespace
