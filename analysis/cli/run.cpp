@@ -15,6 +15,7 @@
 #include "analysis/report/preview.h"
 #include "analysis/report/tables.h"
 #include "sim/engine/run.h"
+#include "sim/tally/shared_science.h"
 
 namespace lacuna {
 
@@ -57,7 +58,10 @@ RunOutcome simulate_into(Recording& recording, Accumulator& accumulator, const S
     how.stop = [&] { return interrupt.requested(); };
     how.progress = [&](const Progress& progress) { line.update(progress); };
     Sinks sinks;
-    sinks.literature = [&](std::uint32_t literature, const std::vector<std::vector<double>>& rows) {
+    const ScienceGroups groups = group_by_science(scenario.regimes);
+    const std::size_t kinds = scenario.regimes.front().science.labs.size();
+    sinks.literature = [&](std::uint32_t literature, std::vector<std::vector<double>> rows) {
+        share_conducted_sums(groups, kinds, rows);
         accumulator.add(rows);
         recording.add_literature(literature, rows);
     };

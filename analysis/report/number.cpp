@@ -41,7 +41,10 @@ std::string show(const Estimate& estimate) {
     const double value = *estimate.value;
     if (!estimate.mcse) return show_number(value, 4);
     if (*estimate.mcse == 0.0) return fmt::format("{} ± 0", value == 0.0 ? "0" : show_number(value, 4));
-    if (is_extreme(*estimate.mcse)) return fmt::format("{:.4g} ± {:.2g}", value, *estimate.mcse);
+    if (*estimate.mcse >= 1e9 || *estimate.mcse < 1e-6) {
+        const double ratio = std::max(1.0, std::fabs(value) / *estimate.mcse);
+        return fmt::format("{:.{}g} ± {:.2g}", value, 2 + static_cast<int>(std::log10(ratio)), *estimate.mcse);
+    }
     const int decimals = decimals_for(*estimate.mcse, 2);
     return fmt::format("{} ± {}", fixed(value, decimals), fixed(*estimate.mcse, decimals));
 }

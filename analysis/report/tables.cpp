@@ -61,6 +61,16 @@ bool is_zero(const Estimate& estimate) {
     return estimate.value && *estimate.value == 0.0 && estimate.mcse && *estimate.mcse == 0.0;
 }
 
+/// Rows in the order of the headline; others keep theirs.
+template <class Entry>
+void order_by_headline(std::vector<Entry>& entries) {
+    const auto place = [](const Entry& entry) {
+        return std::find(headline.begin(), headline.end(), entry.metric) - headline.begin();
+    };
+    std::stable_sort(entries.begin(), entries.end(),
+                     [&](const Entry& a, const Entry& b) { return place(a) < place(b); });
+}
+
 /// Results come estimand by estimand with the regimes within: the rows of a table.
 void add_results(const Results& all, Scope scope, const Wanted& wanted, TextTable& table, Shown& shown) {
     bool headed = false;
@@ -138,7 +148,12 @@ std::string tables(const Results& all, const Wanted& wanted) {
 
 }  // namespace
 
-std::string headline_tables(const Results& results) { return tables(results, is_headline); }
+std::string headline_tables(const Results& results) {
+    Results ordered = results;
+    order_by_headline(ordered.results);
+    order_by_headline(ordered.differences);
+    return tables(ordered, is_headline);
+}
 
 std::string full_tables(const Results& results) {
     return tables(results, [](const std::string&, const std::string&) { return true; });

@@ -7,6 +7,7 @@ namespace lacuna {
 namespace {
 
 constexpr std::size_t gap = 2;
+constexpr std::size_t short_header = 14;  // is not broken
 constexpr std::size_t longest_word = 20;  // of a header that makes its column wider
 
 bool continues(char byte) { return (static_cast<unsigned char>(byte) & 0xC0u) == 0x80u; }
@@ -34,9 +35,9 @@ std::size_t widest(const std::vector<std::string>& lines) {
     return width;
 }
 
-/// The width that a header asks for: that of its longest word.
+/// The width that a header asks for: its own when it is short, else that of its longest word.
 std::size_t header_width(const std::string& header) {
-    std::size_t widest_word = 0;
+    std::size_t widest_word = std::min(shown_width(header), short_header);
     for (std::size_t from = 0; from < header.size();) {
         const std::size_t space = std::min(header.find(' ', from), header.size());
         widest_word = std::max(widest_word, shown_width(header.substr(from, space - from)));

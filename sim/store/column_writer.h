@@ -1,12 +1,12 @@
 // One column of a table in an HDF5 file: its dataset, made when its first chunk is ready.
 #pragma once
 
+#include <algorithm>
 #include <string>
 
 #include "sim/model/tables.h"
 #include "sim/store/chunk.h"
 #include "sim/store/handle.h"
-#include "sim/store/reservation.h"
 
 namespace lacuna {
 

@@ -11,6 +11,7 @@
 
 #include "sim/store/attributes.h"
 #include "sim/store/column_writer.h"
+#include "sim/store/guarded_driver.h"
 
 namespace lacuna {
 
@@ -18,8 +19,7 @@ namespace {
 
 namespace fs = std::filesystem;
 
-constexpr std::uint64_t bytes_a_dataset = 4096;  // of metadata, generously
-constexpr std::uint64_t bytes_a_file = 65536;
+constexpr std::size_t chunks_at_once = 64;  // encoded and waiting to be written, at most 32 MB
 
 [[noreturn]] void refuse(const std::string& path, std::string message, std::string remedy) {
     Fault fault;
@@ -30,14 +30,14 @@ constexpr std::uint64_t bytes_a_file = 65536;
 }
 
 /// File creation without time stamps, so that equal runs are equal bytes.
-Handle create_file(const std::string& path) {
+Handle create_file(GuardedFile& bytes, const std::string& path) {
     const Handle creation = checked(H5Pcreate(H5P_FILE_CREATE), H5Pclose, path);
     check(H5Pset_obj_track_times(creation.id(), false), path);
     const Handle access = checked(H5Pcreate(H5P_FILE_ACCESS), H5Pclose, path);
     // Small tables have many columns; the newer layout keeps each one's overhead to a few hundred bytes.
     check(H5Pset_libver_bounds(access.id(), H5F_LIBVER_V110, H5F_LIBVER_V110), path);
     check(H5Pset_fclose_degree(access.id(), H5F_CLOSE_STRONG), path);
-    return checked(H5Fcreate(path.c_str(), H5F_ACC_TRUNC, creation.id(), access.id()), H5Fclose, "cannot create " + path);
+    return create_hdf5(bytes, creation.id(), access.id(), path);
 }
 
 void create_group(hid_t file, const std::string& name) {
@@ -77,8 +77,9 @@ public:
           compress_(compress),
           parallel_for_(std::move(loop)) {
         silence_hdf5();
-        file_ = create_file(partial_);
+        bytes_.emplace(partial_, path);
         try {
+            file_ = create_file(*bytes_, partial_);
             open(facts, std::move(tables));
         } catch (...) {
             abandon();
@@ -91,6 +92,7 @@ public:
     const std::string& partial() const { return partial_; }
 
     void append(const std::string& name, const Batch& rows) {
+        silence_hdf5();  // the caller's thread may be another one each time
         const auto at = std::find_if(tables_.begin(), tables_.end(), [&](const Table& t) { return t.spec.name == name; });
         if (at == tables_.end()) throw Defect("OutcomeWriter: no table " + name);
         lacuna::append(at->waiting, rows);
@@ -101,18 +103,17 @@ public:
     }
 
     void finish(bool complete, std::uint64_t done, std::uint64_t planned) {
+        silence_hdf5();
         for (Table& table : tables_) {
             write_rows(table, table.waiting.rows, ColumnWriter::rows_of_chunk(table.created ? chunk_rows : table.waiting.rows));
         }
-        reservation_->grow(bytes_a_file);
         write_integer(file_.id(), "complete", complete ? 1 : 0);
         write_text(file_.id(), "literatures_done", std::to_string(done));
         write_text(file_.id(), "literatures_planned", std::to_string(planned));
         tables_.clear();
-        if (!file_.close()) throw RunError(fmt::format("cannot write {}: {}", partial_, hdf5_reason()));
-        reservation_->release_rest();
-        reservation_->sync();
-        reservation_.reset();
+        if (!file_.close()) throw RunError(fmt::format("cannot write {}: {}", path_, hdf5_reason()));
+        bytes_->sync();
+        bytes_.reset();
         std::error_code error;
         fs::rename(partial_, path_, error);
         if (error) throw RunError(fmt::format("cannot rename {} to {}: {}", partial_, path_, error.message()));
@@ -128,10 +129,6 @@ private:
     };
 
     void open(const FileFacts& facts, std::vector<TableSpec> tables) {
-        reservation_.emplace(partial_);
-        std::uint64_t text = bytes_a_file;
-        for (const FactName& fact : fact_names) text += (facts.*fact.member).size();
-        reservation_->grow(text);
         write_text(file_.id(), "format", outcome_format);
         write_integer(file_.id(), "format_version", outcome_format_version);
         for (const FactName& fact : fact_names) write_text(file_.id(), fact.name, facts.*fact.member);
@@ -147,24 +144,25 @@ private:
 
     /// Encodes and writes the first `rows` waiting rows of a table in chunks; all columns have as many.
     void write_rows(Table& table, std::size_t rows, std::size_t rows_in_chunk) {
-        const std::size_t chunks = (rows + rows_in_chunk - 1) / rows_in_chunk;
-        const std::size_t columns = table.columns.size();
-        std::vector<EncodedChunk> encoded(chunks * columns);
-        parallel_for_(encoded.size(), [&](std::size_t job) {
-            const std::size_t first = job / columns * rows_in_chunk;
-            encoded[job] = encode_chunk(table.waiting.columns[job % columns], first, std::min(rows_in_chunk, rows - first),
-                                        rows_in_chunk, compress_);
-        });
-        std::uint64_t bytes = table.created ? 0 : columns * bytes_a_dataset;
-        for (const EncodedChunk& chunk : encoded) bytes += chunk.bytes.size() + 64;
-        reservation_->grow(bytes);
         if (!table.created) {
             for (ColumnWriter& column : table.columns) column.create(file_.id(), rows_in_chunk, rows_in_chunk == chunk_rows);
             table.created = true;
         }
-        for (std::size_t job = 0; job < encoded.size(); ++job) {
-            const std::size_t first = job / columns * rows_in_chunk;
-            table.columns[job % columns].write(encoded[job], std::min(rows_in_chunk, rows - first));
+        const std::size_t columns = table.columns.size();
+        const std::size_t jobs = (rows + rows_in_chunk - 1) / rows_in_chunk * columns;
+        const auto first_row = [&](std::size_t job) { return job / columns * rows_in_chunk; };
+        const auto count = [&](std::size_t job) { return std::min(rows_in_chunk, rows - first_row(job)); };
+        for (std::size_t start = 0; start < jobs; start += chunks_at_once) {
+            std::vector<EncodedChunk> encoded(std::min(chunks_at_once, jobs - start));
+            parallel_for_(encoded.size(), [&](std::size_t i) {
+                const std::size_t job = start + i;
+                encoded[i] = encode_chunk(table.waiting.columns[job % columns], first_row(job), count(job), rows_in_chunk,
+                                          compress_);
+            });
+            for (std::size_t i = 0; i < encoded.size(); ++i) {
+                table.columns[(start + i) % columns].write(encoded[i], count(start + i));
+            }
+            bytes_->check();
         }
     }
 
@@ -179,15 +177,15 @@ private:
     void abandon() noexcept {
         tables_.clear();
         file_.reset();
-        reservation_.reset();
+        bytes_.reset();
         if (!placed_) ::unlink(partial_.c_str());
     }
 
     std::string path_, partial_;
     bool compress_;
     ParallelFor parallel_for_;
+    std::optional<GuardedFile> bytes_;
     Handle file_;
-    std::optional<Reservation> reservation_;
     std::vector<Table> tables_;
     bool placed_ = false;
 };

@@ -341,8 +341,9 @@ def an_existing_output_is_kept_unless_told(d):
 def unwritable_and_absent_directories(d):
     _, err = lacuna("run", config(d), "-o", "absent/out.h5", cwd=d, expect=2)
     contains(err, "absent")
-    _, err = lacuna("run", config(d), "-o", "/proc/out.h5", cwd=d, expect=2)
-    contains(err, "/proc")
+    done = subprocess.run([LACUNA, "run", config(d), "-o", "/proc/out.h5"], cwd=d, capture_output=True, text=True)
+    assert done.returncode in (1, 2), done  # /proc lets root believe that it can be written to
+    contains(done.stderr, "/proc")
     no_temporaries(d, ["small.toml"])
 
 
@@ -414,7 +415,7 @@ def analyse_refuses_foreign_and_newer_files(d):
         file.attrs.modify("format_version", version + 1 if not isinstance(version, str) else "99")
     done = subprocess.run([LACUNA, "analyse", "newer.h5"], cwd=d, capture_output=True, text=True)
     assert done.returncode in (1, 2), done
-    contains(done.stderr, "newer.h5", "version")
+    contains(done.stderr, "newer.h5", "newer lacuna")
 
 
 @test
@@ -499,12 +500,12 @@ def a_full_standard_output_is_a_failure(d):
 @test
 def progress_is_for_terminals_and_quiet_is_quiet(d):
     cfg = config(d, LONG)
-    _, err = lacuna("run", cfg, "--literatures", 600, cwd=d)
+    _, err = lacuna("run", cfg, "--literatures", 60, cwd=d)
     assert "studies/s  " not in err and "\r" not in err
-    _, err = lacuna("run", cfg, "--literatures", 600, "--quiet", "--overwrite", cwd=d)
+    _, err = lacuna("run", cfg, "--literatures", 60, "--quiet", "--overwrite", cwd=d)
     assert err == "", err
     main, terminal = pty.openpty()
-    process = subprocess.Popen([LACUNA, "run", cfg, "--literatures", "4000", "--overwrite"], cwd=d,
+    process = subprocess.Popen([LACUNA, "run", cfg, "--literatures", "1000", "--overwrite"], cwd=d,
                                stdout=subprocess.PIPE, stderr=terminal)
     os.close(terminal)
     shown = b""
