@@ -106,7 +106,8 @@ private:
     std::vector<Tally> new_tallies() const {
         std::vector<Tally> tallies;
         for (std::size_t r = 0; r < prepared_.rules.size(); ++r) {
-            tallies.emplace_back(scenario_.regimes[r].science.labs.size(), prepared_.rules[r].findings);
+            const PreparedScience& science = prepared_.sciences[prepared_.groups.science_of[r]];
+            tallies.emplace_back(science.science.labs.size(), prepared_.rules[r].findings, science.scale);
         }
         return tallies;
     }

@@ -11,8 +11,7 @@
 
 namespace lacuna {
 
-/// How a scenario's literatures are cut into blocks. It depends on the scenario alone, since the order
-/// of sums of doubles follows it.
+/// How a scenario's literatures are cut into blocks, by the scenario alone.
 struct Blocks {
     std::uint64_t questions;           // in a literature
     std::uint64_t questions_a_block;   // a multiple of 32: the groups of the random kernels

@@ -63,7 +63,7 @@ void gather_facts(const PreparedScience& science, const Conducted& block, CountS
         for (std::size_t s = 0; s < count; ++s) scratch.kind[s] = block.lines.kind[studies.line[s]];
         columns.kind = scratch.kind.data();
     }
-    make_study_facts(columns, scratch.facts);
+    make_study_facts(columns, science.scale, scratch.facts);
 }
 
 bool one_study_a_question(const PreparedScience& science, const Roster& roster) {

@@ -1,6 +1,7 @@
 #include "sim/literature/prepared.h"
 
 #include <algorithm>
+#include <cmath>
 
 namespace lacuna {
 
@@ -11,6 +12,14 @@ std::vector<Cut> as_cuts(const Cuts& cuts) {
     for (const double p : cuts.two_sided) all.push_back({p, 2});
     for (const double p : cuts.one_sided) all.push_back({p, 1});
     return all;
+}
+
+/// The power of 2 next to the larger of: a large effect of the field, the largest standard error.
+EffectScale scale_of(const Science& science, const TestTable& table) {
+    double largest = std::fabs(quantile(science.field.null_effect, 0.999));
+    for (const double p : {0.001, 0.5, 0.999}) largest = std::fmax(largest, std::fabs(quantile(science.field.effect, p)));
+    for (const double noncentrality : table.noncentrality) largest = std::fmax(largest, 1.0 / noncentrality);
+    return {std::exp2(std::ceil(std::log2(largest)))};
 }
 
 }  // namespace
@@ -25,6 +34,7 @@ PreparedScience::PreparedScience(const Science& its, const Cuts& cuts, bool line
         lab_lines.emplace_back(kind.lines);
         longest_line = std::max(longest_line, kind.studies.longest());
     }
+    scale = scale_of(its, table);
     for (std::size_t c = 0; c < table.cut_critical.size(); ++c) {
         (c < cuts.two_sided.size() ? cuts_two : cuts_one).push_back(c);
     }

@@ -7,6 +7,7 @@
 #include "sim/design/test_table.h"
 #include "sim/model/schema.h"
 #include "sim/publication/chain.h"
+#include "sim/tally/study_facts.h"
 #include "sim/variate/sampler.h"
 
 namespace lacuna {
@@ -17,6 +18,7 @@ struct PreparedScience {
     Sampler effect, null_effect;
     std::vector<Sampler> lab_lines;           // per kind
     std::vector<std::size_t> cuts_two, cuts_one;  // in table.cut_critical, by sidedness
+    EffectScale scale;                        // of effects and estimates
     std::uint32_t longest_line = 0;  // studies, over the kinds
     bool who_matters;  // whether it must be known which lab runs a line: several kinds, or stored lines
 

@@ -2,6 +2,8 @@
 
 #include <fmt/format.h>
 
+#include <algorithm>
+
 #include "sim/store/attributes.h"
 
 namespace lacuna {
@@ -11,6 +13,7 @@ namespace {
 /// Deflate packs at most 1032 bytes into one (RFC 1951: a match of 258 bytes in two bits).
 constexpr std::uint64_t most_bytes_from_one = 1100;
 constexpr int most_labels = 256;
+constexpr std::uint64_t largest_chunk = 64u << 20;  // bytes; HDF5 takes memory for a whole chunk at once
 
 /// Column type of an integer or float type as it stands in the file.
 ColumnType plain_type(hid_t type, const std::string& path) {
@@ -40,12 +43,19 @@ std::vector<std::string> labels_of(hid_t type, const std::string& path) {
     return labels;
 }
 
-void check_storage(hid_t dataset, const std::string& path) {
+void check_chunk(hid_t properties, std::size_t value_bytes, const std::string& path) {
+    hsize_t rows[H5S_MAX_RANK] = {};
+    if (H5Pget_chunk(properties, H5S_MAX_RANK, rows) != 1) throw RunError(path + ": is not one-dimensional");
+    if (rows[0] > largest_chunk / value_bytes) throw RunError(fmt::format("{}: is stored in pieces of {} rows, which are too large", path, rows[0]));
+}
+
+void check_storage(hid_t dataset, std::size_t value_bytes, const std::string& path) {
     const Handle properties = checked(H5Dget_create_plist(dataset), H5Pclose, path);
     const H5D_layout_t layout = H5Pget_layout(properties.id());
     if (layout != H5D_CHUNKED && layout != H5D_CONTIGUOUS && layout != H5D_COMPACT) {
         throw RunError(path + ": is stored in a way that outcome files do not use");
     }
+    if (layout == H5D_CHUNKED) check_chunk(properties.id(), value_bytes, path);
     if (H5Pget_external_count(properties.id()) != 0) throw RunError(path + ": keeps its values in another file, which is not read");
     for (int i = 0; i < H5Pget_nfilters(properties.id()); ++i) {
         unsigned flags = 0, config = 0;
@@ -69,6 +79,14 @@ std::size_t rows_of(hid_t dataset, std::size_t value_bytes, std::uint64_t file_b
     return rows;
 }
 
+/// Codes have names, so that whoever looks a name up finds one.
+void check_codes(const ColumnData& data, std::size_t labels, const std::string& name) {
+    const auto* codes = std::get_if<std::vector<std::uint8_t>>(&data);
+    if (codes == nullptr || labels == 0 || codes->empty()) return;
+    const std::uint8_t largest = *std::max_element(codes->begin(), codes->end());
+    if (largest >= labels) throw RunError(fmt::format("{}: holds the code {}, which has no name", name, largest));
+}
+
 hid_t memory_type(ColumnType type, hid_t file_type) {
     switch (type) {
         case ColumnType::u8: return H5Tget_class(file_type) == H5T_ENUM ? file_type : H5T_NATIVE_UINT8;
@@ -82,7 +100,6 @@ hid_t memory_type(ColumnType type, hid_t file_type) {
 
 ColumnReader open_column(hid_t file, const std::string& path, const std::string& name, std::uint64_t file_bytes) {
     ColumnReader column{checked(H5Dopen2(file, path.c_str(), H5P_DEFAULT), H5Dclose, path), {}, 0};
-    check_storage(column.dataset.id(), path);
     const Handle type = checked(H5Dget_type(column.dataset.id()), H5Tclose, path);
     column.spec.name = name;
     if (H5Tget_class(type.id()) == H5T_ENUM) {
@@ -91,6 +108,7 @@ ColumnReader open_column(hid_t file, const std::string& path, const std::string&
     } else {
         column.spec.type = plain_type(type.id(), path);
     }
+    check_storage(column.dataset.id(), H5Tget_size(type.id()), path);
     column.spec.units = read_text(column.dataset.id(), "units");
     column.spec.description = read_text(column.dataset.id(), "description");
     column.rows = rows_of(column.dataset.id(), H5Tget_size(type.id()), file_bytes, path);
@@ -117,6 +135,7 @@ ColumnData read_rows(const ColumnReader& column, std::size_t first, std::size_t 
                   "cannot read column " + name);
         },
         data);
+    check_codes(data, column.spec.labels.size(), name);
     return data;
 }
 

@@ -5,6 +5,7 @@
 #include <algorithm>
 #include <charconv>
 #include <filesystem>
+#include <string_view>
 
 #include "sim/base/sha256.h"
 #include "sim/store/attributes.h"
@@ -24,7 +25,8 @@ std::vector<std::string> links_of(hid_t group, const std::string& path) {
     } found;
     const auto add = [](hid_t, const char* name, const H5L_info_t* info, void* out) -> herr_t {
         auto& list = *static_cast<Found*>(out);
-        if (info->type == H5L_TYPE_HARD) list.names.emplace_back(name);
+        // A path as a name would be followed through other groups, and through what they link to.
+        if (info->type == H5L_TYPE_HARD && std::string_view(name).find('/') == std::string_view::npos) list.names.emplace_back(name);
         else list.foreign = true;
         return 0;
     };
@@ -54,7 +56,10 @@ Handle open_file(const std::string& path) {
         H5Eclear2(H5E_DEFAULT);
         throw RunError(fmt::format("{}: is not an HDF5 file, so no outcome file (`lacuna run` writes those)", path));
     }
-    const hid_t id = H5Fopen(path.c_str(), H5F_ACC_RDONLY, H5P_DEFAULT);
+    // Finished files do not change, and some network file systems have no locks.
+    const Handle access = checked(H5Pcreate(H5P_FILE_ACCESS), H5Pclose, path);
+    check(H5Pset_file_locking(access.id(), false, true), path);
+    const hid_t id = H5Fopen(path.c_str(), H5F_ACC_RDONLY, access.id());
     if (id < 0) throw RunError(fmt::format("{}: cannot be opened, it may be cut short or still being written ({})", path, hdf5_reason()));
     return {id, H5Fclose};
 }

@@ -11,8 +11,9 @@ HWY_BEFORE_NAMESPACE();
 namespace lacuna::HWY_NAMESPACE {
 namespace hn = hwy::HWY_NAMESPACE;
 
-/// Orients estimates, takes absolute effects, and bins their ratio, in place; whole vectors only.
-std::size_t RatioVectors(StudyFacts& facts) {
+/// Orients estimates, takes absolute effects, bins their ratio; entries first .. of the real studies,
+/// gathered in `estimate` and `effect`; whole vectors only.
+std::size_t RatioVectors(const double* estimates, const double* effects, double units, StudyFacts& facts) {
     const hn::ScalableTag<double> f;
     const hn::RebindToSigned<decltype(f)> i;
     const hn::RebindToUnsigned<decltype(i)> u;
@@ -21,14 +22,22 @@ std::size_t RatioVectors(StudyFacts& facts) {
     const auto first = hn::Set(i, static_cast<std::int64_t>(1023 + ratio_bins::lowest_exponent) << 6);
     const auto last = hn::Set(i, static_cast<std::int64_t>(ratio_bins::per_sign - 1));
     const auto middle = hn::Set(i, static_cast<std::int64_t>(ratio_bins::per_sign));
+    const auto scale = hn::Set(f, units);
+    const auto most = hn::Set(f, most_units);
+    // Rounded to whole units: adding and subtracting 1.5 * 2^52 leaves the integer in the low bits.
+    const auto magic = hn::Set(f, 0x1.8p52);
+    const auto whole = [&](auto x) HWY_ATTR {
+        const auto units_of_x = hn::Min(hn::Max(hn::Mul(x, scale), hn::Neg(most)), most);
+        return hn::Sub(hn::BitCast(i, hn::Add(units_of_x, magic)), hn::BitCast(i, magic));
+    };
     std::size_t at = 0;
     for (; at + lanes <= facts.real.size(); at += lanes) {
-        const auto signed_effect = hn::LoadU(f, facts.effect.data() + at);
+        const auto signed_effect = hn::LoadU(f, effects + at);
         const auto sign = hn::And(signed_effect, hn::SignBit(f));
         const auto effect = hn::Abs(signed_effect);
-        const auto estimate = hn::Xor(hn::LoadU(f, facts.estimate.data() + at), sign);
-        hn::StoreU(estimate, f, facts.estimate.data() + at);
-        hn::StoreU(effect, f, facts.effect.data() + at);
+        const auto estimate = hn::Xor(hn::LoadU(f, estimates + at), sign);
+        hn::StoreU(whole(estimate), i, facts.estimate.data() + at);
+        hn::StoreU(whole(effect), i, facts.effect.data() + at);
         // Exponent and leading six bits of the mantissa, as one integer: the bin within a sign.
         const auto ratio = hn::Div(estimate, effect);
         const auto bits = hn::ShiftRight<46>(hn::BitCast(i, hn::Abs(ratio)));
@@ -89,9 +98,14 @@ void list_real(const StudyColumns& in, std::vector<std::uint32_t>& real) {
     real.resize(found);
 }
 
+/// To whole units, ties to even, as the vectors do.
+std::int64_t whole(double value, double units) {
+    return static_cast<std::int64_t>(std::nearbyint(std::fmin(std::fmax(value * units, -most_units), most_units)));
+}
+
 }  // namespace
 
-void make_study_facts(const StudyColumns& in, StudyFacts& out) {
+void make_study_facts(const StudyColumns& in, EffectScale scale, StudyFacts& out) {
     out.cell.resize(in.count);
     out.participants = in.participants;
     std::uint16_t* cell = out.cell.data();
@@ -102,14 +116,19 @@ void make_study_facts(const StudyColumns& in, StudyFacts& out) {
     out.estimate.resize(real);
     out.effect.resize(real);
     out.bin.resize(real);
+    out.gathered.resize(2 * real);
+    double* estimate = out.gathered.data();
+    double* effect = estimate + real;
     for (std::size_t k = 0; k < real; ++k) {
-        out.estimate[k] = in.estimate[out.real[k]];
-        out.effect[k] = in.effect[out.real[k]];
+        estimate[k] = in.estimate[out.real[k]];
+        effect[k] = in.effect[out.real[k]];
     }
-    for (std::size_t k = HWY_DYNAMIC_DISPATCH(RatioVectors)(out); k < real; ++k) {
-        if (std::signbit(out.effect[k])) out.estimate[k] = -out.estimate[k];
-        out.effect[k] = std::fabs(out.effect[k]);
-        out.bin[k] = bin_of(out.estimate[k] / out.effect[k]);
+    const double units = scale.units_in(1.0);
+    for (std::size_t k = HWY_DYNAMIC_DISPATCH(RatioVectors)(estimate, effect, units, out); k < real; ++k) {
+        const double oriented = std::signbit(effect[k]) ? -estimate[k] : estimate[k];
+        out.estimate[k] = whole(oriented, units);
+        out.effect[k] = whole(std::fabs(effect[k]), units);
+        out.bin[k] = bin_of(oriented / std::fabs(effect[k]));
     }
 }
 

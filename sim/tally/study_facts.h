@@ -20,6 +20,16 @@ inline constexpr std::size_t count = 2 * per_sign;
 double lower_edge(std::size_t bin);
 }  // namespace ratio_bins
 
+/// Sums of effects and estimates are kept in whole units of scale * 2^-30, so that they are exact and do
+/// not depend on any order: of studies, blocks, threads, or of how rules divide studies among statuses.
+/// Values beyond 2^21 scales (which takes a draw far beyond any seen) count as that.
+struct EffectScale {
+    double scale = 1.0;
+    double unit() const { return scale * 0x1p-30; }
+    double units_in(double value) const { return value / unit(); }
+};
+inline constexpr double most_units = 0x1p51;
+
 /// Per-study inputs, each an array of `count`: Truth and Claim codes, lab kind (null: all 0), estimate,
 /// effect of the study's question, participants.
 struct StudyColumns {
@@ -38,12 +48,13 @@ struct StudyFacts {
     const std::uint32_t* participants = nullptr;  // the column given
     // Of the studies of real questions, which alone have effects to compare with.
     std::vector<std::uint32_t> real;        // their entries
-    std::vector<double> estimate;           // oriented by the sign of the effect
-    std::vector<double> effect;             // absolute
+    std::vector<std::int64_t> estimate;     // oriented by the sign of the effect, in units of the scale
+    std::vector<std::int64_t> effect;       // absolute, in units of the scale
     std::vector<std::uint16_t> bin;         // of the ratio estimate / effect
+    std::vector<double> gathered;           // scratch
 };
 
-/// Fills `facts` from columns.
-void make_study_facts(const StudyColumns& columns, StudyFacts& facts);
+/// Fills `facts` from columns. `scale`: the order of magnitude of effects and estimates, a power of 2.
+void make_study_facts(const StudyColumns& columns, EffectScale scale, StudyFacts& facts);
 
 }  // namespace lacuna

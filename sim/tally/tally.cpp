@@ -16,12 +16,14 @@ constexpr std::size_t lowest_status(Scope scope) { return static_cast<std::size_
 
 }  // namespace
 
-Tally::Tally(std::size_t kinds, Findings findings)
+Tally::Tally(std::size_t kinds, Findings findings, EffectScale scale)
     : kinds_(kinds),
       cells_(kinds * 12),
       findings_(findings),
-      sums_(lanes * statuses * cells_),
-      packed_(sums_.size()),
+      scale_(scale),
+      sums_(statuses * cells_),
+      packed_(lanes * sums_.size()),
+      effects_(lanes * sums_.size()),
       ratios_(statuses * 2 * ratio_bins::count) {}
 
 void Tally::clear() {
@@ -51,29 +53,44 @@ void Tally::count_studies(const StudyFacts& facts, const std::uint8_t* status) {
             packed[(s % lanes) * stride + status[s] * cells_ + cell[s]] += (std::uint64_t{1} << 40) + facts.participants[s];
         }
         for (std::size_t i = 0; i < packed_.size(); ++i) {
-            sums_[i].count += static_cast<double>(packed[i] >> 40);
-            sums_[i].participants += static_cast<double>(packed[i] & ((std::uint64_t{1} << 40) - 1));
+            Cell& sum = sums_[i % stride];
+            sum.count += packed[i] >> 40;
+            sum.participants += packed[i] & ((std::uint64_t{1} << 40) - 1);
             packed[i] = 0;
         }
     }
 }
 
+/// Sums of effects in 64 bits, for as many studies as cannot overflow (2^51 units each, 2^11 of them),
+/// then in 128.
 void Tally::sum_effects(const StudyFacts& facts, const std::uint8_t* status) {
+    constexpr std::size_t stretch = 2048;
     const std::size_t stride = statuses * cells_;
     std::size_t found[4];
     for (std::size_t claim = 0; claim < 4; ++claim) found[claim] = finds(claim);
     const std::size_t count = facts.real.size();
-    Cell* sums = sums_.data();
+    Effects* effects = effects_.data();
     std::uint32_t* ratios = ratios_.data();
-    for (std::size_t k = 0; k < count; ++k) {
-        const std::uint32_t s = facts.real[k];
-        const std::size_t at = facts.cell[s];
-        const std::size_t its_status = status[s];
-        Cell& sum = sums[(k % lanes) * stride + its_status * cells_ + at];
-        sum.estimate += facts.estimate[k];
-        sum.abs_estimate += std::fabs(facts.estimate[k]);
-        sum.effect += facts.effect[k];
-        ++ratios[(its_status * 2 + found[at % 4]) * ratio_bins::count + facts.bin[k]];
+    for (std::size_t begin = 0; begin < count; begin += stretch) {
+        const std::size_t end = std::min(count, begin + stretch);
+        for (std::size_t k = begin; k < end; ++k) {
+            const std::uint32_t s = facts.real[k];
+            const std::size_t at = facts.cell[s];
+            const std::size_t its_status = status[s];
+            const std::int64_t estimate = facts.estimate[k];
+            Effects& sum = effects[(k % lanes) * stride + its_status * cells_ + at];
+            sum.estimate += estimate;
+            sum.abs_estimate += estimate < 0 ? -estimate : estimate;
+            sum.effect += facts.effect[k];
+            ++ratios[(its_status * 2 + found[at % 4]) * ratio_bins::count + facts.bin[k]];
+        }
+        for (std::size_t i = 0; i < effects_.size(); ++i) {
+            Cell& sum = sums_[i % stride];
+            sum.estimate += effects[i].estimate;
+            sum.abs_estimate += effects[i].abs_estimate;
+            sum.effect += effects[i].effect;
+            effects[i] = {};
+        }
     }
 }
 
@@ -109,12 +126,6 @@ void Tally::add(const Cell& from, Cell& to) {
     to.abs_estimate += from.abs_estimate;
     to.effect += from.effect;
     to.participants += from.participants;
-}
-
-Tally::Cell Tally::total(std::size_t status, std::size_t cell) const {
-    Cell sum;
-    for (std::size_t lane = 0; lane < lanes; ++lane) add(sums_[(lane * statuses + status) * cells_ + cell], sum);
-    return sum;
 }
 
 /// Sums of the ratio histograms over each octave, so that a median need not go through every bin.
@@ -169,7 +180,9 @@ double Tally::median(const Octaves& octaves, std::size_t from_status, bool findi
 }
 
 void Tally::put_studies(const Layout& layout, std::vector<double>& row) const {
+    Cell effects[4][scopes];  // by claim, over the truths that are real
     for (std::size_t cell = 0; cell < cells_; ++cell) {
+        if (cell % 12 == 0) std::fill_n(&effects[0][0], 4 * scopes, Cell{});
         const std::size_t kind = cell / 12;
         const auto truth = Truth(cell / 4 % 3);
         const auto claim = Claim(cell % 4);
@@ -178,21 +191,27 @@ void Tally::put_studies(const Layout& layout, std::vector<double>& row) const {
         for (std::size_t s = scopes; s-- > 0;) {
             const auto scope = Scope(s);
             add(total(lowest_status(scope), cell), sum);
-            row[layout.studies(kind, scope, truth, claim)] = sum.count;
-            row[layout.participants(kind, scope)] += sum.participants;
+            const auto count = static_cast<double>(sum.count);
+            row[layout.studies(kind, scope, truth, claim)] = count;
+            row[layout.participants(kind, scope)] += static_cast<double>(sum.participants);
             if (manuscripts_from_studies_) {
                 const auto its = finds(cell) ? ManuscriptClass::supportive : ManuscriptClass::null;
-                row[layout.manuscripts(scope, real, its)] += sum.count;
+                row[layout.manuscripts(scope, real, its)] += count;
             }
             if (questions_from_studies_) {
-                row[layout.questions(scope, real, Standing::studied)] += sum.count;
-                row[layout.questions(scope, real, Standing::any_finding)] += finds(cell) ? sum.count : 0.0;
-                row[layout.questions(scope, real, Standing::majority)] += finds(cell) ? sum.count : 0.0;
+                row[layout.questions(scope, real, Standing::studied)] += count;
+                row[layout.questions(scope, real, Standing::any_finding)] += finds(cell) ? count : 0.0;
+                row[layout.questions(scope, real, Standing::majority)] += finds(cell) ? count : 0.0;
             }
             if (!real) continue;
-            row[layout.sum(kind, scope, claim, Sum::estimate)] += sum.estimate;
-            row[layout.sum(kind, scope, claim, Sum::abs_estimate)] += sum.abs_estimate;
-            row[layout.sum(kind, scope, claim, Sum::abs_effect)] += sum.effect;
+            add(sum, effects[static_cast<std::size_t>(claim)][s]);
+        }
+        if (truth != Truth::real_negative) continue;  // both real truths are in now
+        for (std::size_t s = 0; s < scopes; ++s) {
+            const Cell& its = effects[static_cast<std::size_t>(claim)][s];
+            row[layout.sum(kind, Scope(s), claim, Sum::estimate)] = static_cast<double>(its.estimate) * scale_.unit();
+            row[layout.sum(kind, Scope(s), claim, Sum::abs_estimate)] = static_cast<double>(its.abs_estimate) * scale_.unit();
+            row[layout.sum(kind, Scope(s), claim, Sum::abs_effect)] = static_cast<double>(its.effect) * scale_.unit();
         }
     }
 }

@@ -15,11 +15,11 @@ struct QuestionCount {
     std::uint32_t findings[3] = {};
 };
 
-/// The counts of one literature (or a part of it) under one regime. Parts merge by addition, in the
-/// order in which they are merged: sums of doubles depend on it, so the engine keeps one order.
+/// The counts of one literature (or a part of it) under one regime. Everything is counted in whole
+/// numbers, so parts merge to the same bits in any order.
 class Tally {
 public:
-    Tally(std::size_t kinds, Findings findings);
+    Tally(std::size_t kinds, Findings findings, EffectScale scale);
 
     /// Every study once. `status`: a Status each.
     void add_studies(const StudyFacts& facts, const std::uint8_t* status);
@@ -44,16 +44,20 @@ public:
     std::vector<double> row() const;
 
 private:
+    __extension__ using Wide = __int128;
     struct Cell {
-        double count = 0, participants = 0;                     // all studies
-        double estimate = 0, abs_estimate = 0, effect = 0;      // studies of real questions
+        std::uint64_t count = 0, participants = 0;            // all studies
+        Wide estimate = 0, abs_estimate = 0, effect = 0;      // studies of real questions, units of the scale
     };
-    static constexpr std::size_t lanes = 4;  // copies of the sums, so that additions overlap
+    struct Effects {
+        std::int64_t estimate = 0, abs_estimate = 0, effect = 0, unused = 0;
+    };
+    static constexpr std::size_t lanes = 4;  // copies of the scratch sums, so that additions overlap
 
     void count_studies(const StudyFacts& facts, const std::uint8_t* status);
     void sum_effects(const StudyFacts& facts, const std::uint8_t* status);
     static void add(const Cell& from, Cell& to);
-    Cell total(std::size_t status, std::size_t cell) const;
+    const Cell& total(std::size_t status, std::size_t cell) const { return sums_[status * cells_ + cell]; }
     bool finds(std::size_t cell) const { return is_finding(Claim(cell % 4), findings_); }
     struct Octaves;
     double median(const Octaves& octaves, std::size_t lowest_status, bool findings_only) const;
@@ -63,8 +67,10 @@ private:
 
     std::size_t kinds_, cells_;
     Findings findings_;
-    std::vector<Cell> sums_;                   // [lane][status][cell]
+    EffectScale scale_;
+    std::vector<Cell> sums_;                   // [status][cell]
     std::vector<std::uint64_t> packed_;        // [lane][status][cell], scratch of count_studies
+    std::vector<Effects> effects_;             // [lane][status][cell], scratch of sum_effects
     std::vector<std::uint32_t> ratios_;        // [status][finding][bin]
     std::uint64_t manuscripts_[3][2][3] = {};  // [status][real][class]
     std::uint64_t questions_[3][2][3] = {};    // [scope][real][standing]
