@@ -1,4 +1,5 @@
 #include <catch2/catch.hpp>
+#include <thread>
 
 #include "sim/store/chunk.h"
 #include "tests/unit/store/sample_outcome.h"
@@ -51,6 +52,67 @@ TEST_CASE("Equal runs are equal bytes, whatever the batches", "[store]") {
     CHECK(payload_digest(OutcomeReader(folder / "a.h5")) == payload_digest(OutcomeReader(folder / "b.h5")));
     write(folder / "d.h5", 150001, 65536);
     CHECK(payload_digest(OutcomeReader(folder / "a.h5")) != payload_digest(OutcomeReader(folder / "d.h5")));
+}
+
+TEST_CASE("Equal runs are equal bytes, whatever the threads", "[store]") {
+    const Folder folder;
+    const auto with_threads = [&](const std::string& path, std::size_t threads) {
+        const ParallelFor loop = [threads](std::size_t count, const std::function<void(std::size_t)>& body) {
+            std::vector<std::thread> crew;
+            for (std::size_t t = 0; t < threads; ++t) {
+                crew.emplace_back([&, t] {
+                    for (std::size_t i = count; i-- > 0;) {
+                        if (i % threads == t) body(i);
+                    }
+                });
+            }
+            for (std::thread& one : crew) one.join();
+        };
+        OutcomeWriter writer(path, false, facts(), {spec()}, true, loop);
+        // More chunks than are encoded at once (64).
+        for (std::size_t first = 0; first < 14 * chunk_rows; first += 7 * chunk_rows) writer.append("studies", rows(first, 7 * chunk_rows));
+        writer.append("studies", rows(14 * chunk_rows, 3));
+        writer.finish(true, 3, 3);
+    };
+    write(folder / "plain.h5", 14 * chunk_rows + 3, 100'000);
+    for (const std::size_t threads : {1, 2, 7}) {
+        const std::string path = folder / std::to_string(threads);
+        with_threads(path, threads);
+        CHECK(bytes_of(path) == bytes_of(folder / "plain.h5"));
+        CHECK(payload_digest(OutcomeReader(path)) == payload_digest(OutcomeReader(folder / "plain.h5")));
+    }
+}
+
+TEST_CASE("Long, empty and many names are kept", "[store]") {
+    const Folder folder;
+    FileFacts long_facts = facts();
+    long_facts.title.clear();
+    long_facts.config_text.assign(5'000'000, '#');
+    TableSpec wide = spec();
+    wide.columns[0].labels.clear();
+    for (int code = 0; code < 256; ++code) wide.columns[0].labels.push_back("kind " + std::to_string(code) + std::string(60, '.'));
+    wide.columns[1].description.clear();
+    const TableSpec empty{"questions", {{"question", ColumnType::i32, "code", "none was asked", {}}}};
+    {
+        OutcomeWriter writer(folder / "out.h5", false, long_facts, {wide, empty, {"points", {}}}, true, serial);
+        writer.append("studies", rows(0, 10));
+        CHECK_THROWS_AS(writer.append("laboratories", rows(0, 1)), Defect);
+        writer.finish(false, 1, 4'000'000'000);
+    }
+    const OutcomeReader reader(folder / "out.h5");
+    CHECK(reader.facts().title.empty());
+    CHECK(reader.facts().config_text == long_facts.config_text);
+    CHECK_FALSE(reader.complete());
+    CHECK(reader.literatures_planned() == 4'000'000'000);
+    const auto& columns = reader.columns("studies");
+    const auto labelled = std::find_if(columns.begin(), columns.end(), [](const ColumnSpec& c) { return c.name == "claim"; });
+    REQUIRE(labelled != columns.end());
+    CHECK(labelled->labels == wide.columns[0].labels);
+    CHECK(reader.rows("questions") == 0);
+    CHECK(reader.columns("questions").size() == 1);
+    CHECK(reader.has("points"));
+    CHECK_FALSE(reader.has("laboratories"));
+    CHECK_THROWS_WITH(reader.read("studies", "colour"), Catch::Contains("has no column 'colour'"));
 }
 
 TEST_CASE("Two hundred narrow columns stay a small file", "[store]") {
