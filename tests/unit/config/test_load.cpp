@@ -153,7 +153,7 @@ TEST_CASE("a kind of labs has the design's size unless it has its own") {
     CHECK(without.regimes[0].science.labs[0].size.n == 33);
 }
 
-TEST_CASE("--set changes any key, by position, name and star, and takes plain words") {
+TEST_CASE("An override (--set) changes any key, by position, name and star, and takes plain words") {
     const std::string text = R"(
 [[journal]]
 name = "First Letters"
@@ -182,7 +182,7 @@ accept = { by = "class", supportive = 1, mixed = 1, null = 1 }
     CHECK(journals[1].accept.null == 0.125);
 }
 
-TEST_CASE("--set mends a fault of the file") {
+TEST_CASE("An override (--set) mends a fault of the file") {
     CHECK(parse("[field]\ntrue_rate = 2\n", {{"field.true_rate", "0.2"}}).regimes[0].science.field.true_rate ==
           0.2);
 }
