@@ -16,9 +16,15 @@ int analyse_command(const Options& options, const BuildFacts& build) {
                             run.file.literatures_done(), run.file.literatures_planned()));
     }
     switch (options.format) {
-        case Format::text: print(full_tables(results)); break;
-        case Format::json: print(results_json(results, build.version)); break;
-        case Format::csv: print(all_csv(results)); break;
+        case Format::text:
+            print(full_tables(results));
+            break;
+        case Format::json:
+            print(results_json(results, build.version));
+            break;
+        case Format::csv:
+            print(all_csv(results));
+            break;
     }
     return exit_code::done;
 }

@@ -31,8 +31,8 @@ std::string processor_text() {
 }
 
 std::string version_text(const BuildFacts& build) {
-    return fmt::format("lacuna {}\ncommit    {}\ncompiler  {}\nlibraries {}\nflags     {}\nvectors   {}\n", build.version,
-                       build.commit, compiler_text(), build.libraries, build.flags, vector_target());
+    return fmt::format("lacuna {}\ncommit    {}\ncompiler  {}\nlibraries {}\nflags     {}\nvectors   {}\n",
+                       build.version, build.commit, compiler_text(), build.libraries, build.flags, vector_target());
 }
 
 }  // namespace lacuna

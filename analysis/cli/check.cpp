@@ -47,9 +47,15 @@ Preview preview_of(const Scenario& scenario, unsigned threads) {
 int check_command(const Options& options) {
     const Preview preview = preview_of(load_scenario(options.input, overrides(options)), options.threads);
     switch (options.format) {
-        case Format::text: print(preview_text(preview)); break;
-        case Format::json: print(preview_json(preview)); break;
-        case Format::csv: print(preview_csv(preview)); break;
+        case Format::text:
+            print(preview_text(preview));
+            break;
+        case Format::json:
+            print(preview_json(preview));
+            break;
+        case Format::csv:
+            print(preview_csv(preview));
+            break;
     }
     return exit_code::done;
 }

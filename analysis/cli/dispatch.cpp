@@ -13,10 +13,14 @@ namespace {
 
 int dispatch(const Options& options, const BuildFacts& build) {
     switch (options.command) {
-        case Command::check: return check_command(options);
-        case Command::run: return run_command(options, build);
-        case Command::analyse: return analyse_command(options, build);
-        case Command::export_tables: return export_command(options);
+        case Command::check:
+            return check_command(options);
+        case Command::run:
+            return run_command(options, build);
+        case Command::analyse:
+            return analyse_command(options, build);
+        case Command::export_tables:
+            return export_command(options);
     }
     throw Defect("dispatch: unknown command");
 }
@@ -33,7 +37,8 @@ int run_lacuna(int count, const char* const* arguments, const BuildFacts& build)
         for (const Fault& fault : error.faults()) message(to_string(fault) + "\n");
         return exit_code::unusable;
     } catch (const std::bad_alloc&) {
-        message("lacuna: out of memory (fewer threads need less: --threads 1; store.detail = \"literatures\" least)\n");
+        message(
+            "lacuna: out of memory (fewer threads need less: --threads 1; store.detail = \"literatures\" least)\n");
     } catch (const Defect& error) {
         message(fmt::format("lacuna: this is a defect of the program, please report it: {}\n", error.what()));
     } catch (const std::exception& error) {

@@ -1,6 +1,7 @@
 #include "analysis/cli/model_preview.h"
 
 #include <fmt/format.h>
+
 #include <nlohmann/json.hpp>
 
 namespace lacuna {

@@ -73,7 +73,9 @@ CLI::App* add_command(CLI::App& app, const CommandText& text, Raw& raw) {
             ->type_name("OUT.h5");
     }
     if (text.command == Command::export_tables) {
-        sub->add_option("-o,--output", raw.options.output, "directory for the CSV files")->type_name("DIR")->required();
+        sub->add_option("-o,--output", raw.options.output, "directory for the CSV files")
+            ->type_name("DIR")
+            ->required();
     }
     if (text.command == Command::run || text.command == Command::export_tables) {
         sub->add_flag("--overwrite", raw.options.overwrite, "replace what is already there");
@@ -149,9 +151,12 @@ CLI::App& chosen_command(CLI::App& app, Faults& faults) {
     for (const CommandText& text : commands) names.emplace_back(text.name);
     const std::vector<std::string> extras = app.remaining();
     const bool option = !extras.empty() && extras[0].starts_with('-');
-    if (extras.empty()) faults.add("", "a command is missing", "one of check, run, analyse, export; see lacuna --help");
-    else if (option) faults.add(extras[0], "unknown option", suggestion(extras[0], option_names(app)));
-    else faults.add("", "unknown command '" + extras[0] + "'", suggestion(extras[0], names));
+    if (extras.empty())
+        faults.add("", "a command is missing", "one of check, run, analyse, export; see lacuna --help");
+    else if (option)
+        faults.add(extras[0], "unknown option", suggestion(extras[0], option_names(app)));
+    else
+        faults.add("", "unknown command '" + extras[0] + "'", suggestion(extras[0], names));
     faults.raise();
     throw Defect("chosen_command: no fault found");
 }
@@ -184,11 +189,13 @@ std::string help_text(CLI::App& app) {
 
 Invocation parse_arguments(int count, const char* const* arguments, const BuildFacts& build) {
     Raw raw;
-    CLI::App app("Simulates scientific literatures under selective publication, and says how wrong they are.", "lacuna");
+    CLI::App app("Simulates scientific literatures under selective publication, and says how wrong they are.",
+                 "lacuna");
     app.allow_extras();
     app.add_flag("--version", raw.version, "print build facts and exit");
-    app.footer("Example:\n  lacuna run configs/biostimulant-trials.toml\nHelp on a command: lacuna COMMAND --help\n"
-               "Exit codes: 0 done; 1 the run failed; 2 usage or config is wrong; 3 stopped early, state kept");
+    app.footer(
+        "Example:\n  lacuna run configs/biostimulant-trials.toml\nHelp on a command: lacuna COMMAND --help\n"
+        "Exit codes: 0 done; 1 the run failed; 2 usage or config is wrong; 3 stopped early, state kept");
     for (const CommandText& text : commands) add_command(app, text, raw);
     try {
         app.parse(count, arguments);

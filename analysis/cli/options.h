@@ -15,11 +15,11 @@ enum class ShowProgress { automatic, always, never };
 
 struct Options {
     Command command = Command::check;
-    std::string input;                // CONFIG or OUT.h5
-    std::string output;               // -o; empty: the command's default
-    std::vector<std::string> sets;    // KEY=VALUE, as given
+    std::string input;                             // CONFIG or OUT.h5
+    std::string output;                            // -o; empty: the command's default
+    std::vector<std::string> sets;                 // KEY=VALUE, as given
     std::optional<std::string> seed, literatures;  // as given; values of run.seed and run.literatures
-    unsigned threads = 0;             // 0: as many as the machine has
+    unsigned threads = 0;                          // 0: as many as the machine has
     Format format = Format::text;
     ShowProgress progress = ShowProgress::automatic;
     bool quiet = false;

@@ -32,7 +32,11 @@ std::string progress_text(const Progress& progress, double seconds) {
 }
 
 ProgressLine::ProgressLine(bool shown, bool terminal, Clock clock, Write write)
-    : shown_(shown), terminal_(terminal), clock_(std::move(clock)), write_(std::move(write)), start_(clock_()),
+    : shown_(shown),
+      terminal_(terminal),
+      clock_(std::move(clock)),
+      write_(std::move(write)),
+      start_(clock_()),
       last_(start_) {}
 
 void ProgressLine::update(const Progress& progress) {

@@ -1,3 +1,5 @@
+#include "sim/engine/run.h"
+
 #include <fmt/format.h>
 
 #include <chrono>
@@ -14,8 +16,6 @@
 #include "analysis/report/number.h"
 #include "analysis/report/preview.h"
 #include "analysis/report/tables.h"
-#include "sim/engine/run.h"
-#include "sim/tally/shared_science.h"
 
 namespace lacuna {
 
@@ -37,9 +37,15 @@ bool shows_progress(const Options& options) {
 
 void print_results(const Results& results, Format format, const BuildFacts& build) {
     switch (format) {
-        case Format::text: print(headline_tables(results)); break;
-        case Format::json: print(results_json(results, build.version)); break;
-        case Format::csv: print(all_csv(results)); break;
+        case Format::text:
+            print(headline_tables(results));
+            break;
+        case Format::json:
+            print(results_json(results, build.version));
+            break;
+        case Format::csv:
+            print(all_csv(results));
+            break;
     }
 }
 
@@ -58,10 +64,7 @@ RunOutcome simulate_into(Recording& recording, Accumulator& accumulator, const S
     how.stop = [&] { return interrupt.requested(); };
     how.progress = [&](const Progress& progress) { line.update(progress); };
     Sinks sinks;
-    const ScienceGroups groups = group_by_science(scenario.regimes);
-    const std::size_t kinds = scenario.regimes.front().science.labs.size();
-    sinks.literature = [&](std::uint32_t literature, std::vector<std::vector<double>> rows) {
-        share_conducted_sums(groups, kinds, rows);
+    sinks.literature = [&](std::uint32_t literature, const std::vector<std::vector<double>>& rows) {
         accumulator.add(rows);
         recording.add_literature(literature, rows);
     };

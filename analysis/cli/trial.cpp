@@ -31,7 +31,8 @@ double studies_a_literature(const Scenario& scenario) {
 Scenario smaller(Scenario scenario, double studies) {
     const double scale = std::min(1.0, studies_enough / std::max(studies, 1.0));
     const auto scaled = [&](std::uint64_t count) {
-        return std::max<std::uint64_t>(1, static_cast<std::uint64_t>(std::llround(static_cast<double>(count) * scale)));
+        return std::max<std::uint64_t>(
+            1, static_cast<std::uint64_t>(std::llround(static_cast<double>(count) * scale)));
     };
     for (Regime& regime : scenario.regimes) {
         regime.science.field.questions = scaled(regime.science.field.questions);
@@ -44,7 +45,8 @@ Scenario smaller(Scenario scenario, double studies) {
 double plain_bytes(const Batch& batch) {
     double bytes = 0.0;
     for (const ColumnData& column : batch.columns) {
-        std::visit([&](const auto& values) { bytes += static_cast<double>(values.size() * sizeof values[0]); }, column);
+        std::visit([&](const auto& values) { bytes += static_cast<double>(values.size() * sizeof values[0]); },
+                   column);
     }
     return bytes;
 }

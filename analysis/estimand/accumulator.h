@@ -16,11 +16,11 @@ namespace lacuna {
 /// form (Chan, Golub & LeVeque 1983, The American Statistician 37:242, eq. 1.5): the same numbers
 /// in give the same bits out, whichever regime they belong to.
 struct RatioMoments {
-    double a = 0, b = 0;            // sums
+    double a = 0, b = 0;  // sums
     double mean_a = 0, mean_b = 0;
     double aa = 0, ab = 0, bb = 0;  // sums of products of deviations from the means
     double a_a0 = 0, a_b0 = 0, b_a0 = 0, b_b0 = 0;
-    std::uint64_t entered = 0;      // literatures with b not 0
+    std::uint64_t entered = 0;  // literatures with b not 0
 };
 
 /// R = sum a / sum b with the standard error of the ratio of means by linearisation (Cochran 1977,
@@ -43,7 +43,7 @@ public:
     void add(const std::vector<std::vector<double>>& rows);
 
     std::uint64_t literatures() const { return literatures_; }
-    std::vector<Result> results() const;          // estimand by estimand, regimes within
+    std::vector<Result> results() const;                // estimand by estimand, regimes within
     std::vector<PairedDifference> differences() const;  // of regimes 1, 2, ... against regime 0
 
 private:
@@ -51,7 +51,9 @@ private:
         RatioMoments moments;
         SpreadSample sample;
     };
-    const Cell& cell(std::size_t estimand, std::size_t regime) const { return cells_[estimand * regimes() + regime]; }
+    const Cell& cell(std::size_t estimand, std::size_t regime) const {
+        return cells_[estimand * regimes() + regime];
+    }
     std::size_t regimes() const { return by_regime_.size(); }
 
     std::vector<Estimands> by_regime_;

@@ -23,9 +23,10 @@ void add_ratio(const Part& part, Scope scope, const Claims& claims, const std::s
 }
 
 void add_bias(const Part& part, Scope scope, const Claims& claims, const std::string& suffix, Estimands& out) {
-    out.push_back({"effect_bias" + suffix, scope, "all",
-                   difference_of(part.sums(scope, claims, Sum::estimate), part.sums(scope, claims, Sum::abs_effect)),
-                   sum_of(part.studies(scope, real_truths(), claims))});
+    out.push_back(
+        {"effect_bias" + suffix, scope, "all",
+         difference_of(part.sums(scope, claims, Sum::estimate), part.sums(scope, claims, Sum::abs_effect)),
+         sum_of(part.studies(scope, real_truths(), claims))});
 }
 
 }  // namespace

@@ -18,7 +18,7 @@ using Form = std::function<double(std::span<const double> row)>;
 /// numerator / denominator. A literature whose denominator is 0 holds nothing that the estimand is
 /// about; its numerator is 0 too.
 struct Estimand {
-    std::string metric;   // snake_case, as in the results
+    std::string metric;  // snake_case, as in the results
     Scope scope;
     std::string stratum;  // "all", or a part: "claim=positive", "class=mixed", "lab=routine"
     Form numerator;

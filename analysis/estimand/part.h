@@ -29,8 +29,8 @@ public:
         : layout_(layout), findings_(findings), kind_(kind) {}
 
     const Layout& layout() const { return layout_; }
-    Claims findings() const;      // the claims that count as discoveries
-    Claims nonfindings() const;   // the others
+    Claims findings() const;     // the claims that count as discoveries
+    Claims nonfindings() const;  // the others
 
     Columns studies(Scope scope, const Truths& truths, const Claims& claims) const;
     Columns sums(Scope scope, const Claims& claims, Sum what) const;

@@ -43,8 +43,8 @@ void add_missing_share(const Part& part, Estimands& out) {
     const auto add = [&](const std::string& stratum, const Claims& claims) {
         const Columns conducted = part.studies(Scope::conducted, all_truths(), claims);
         const Columns published = part.studies(Scope::published, all_truths(), claims);
-        out.push_back({"missing_share", Scope::published, stratum, difference_of(conducted, published),
-                       sum_of(conducted)});
+        out.push_back(
+            {"missing_share", Scope::published, stratum, difference_of(conducted, published), sum_of(conducted)});
     };
     add("all", all_claims());
     for (Claim claim : all_claims()) add(claim_stratum(claim), {claim});

@@ -19,12 +19,15 @@ void check_columns(const std::vector<ColumnSpec>& found, const std::string& path
         const auto same = [&](const ColumnSpec& other) { return other.name == column.name; };
         const auto at = std::find_if(found.begin(), found.end(), same);
         if (at == found.end()) {
-            throw RunError(fmt::format("{}: table '{}' has no column '{}': the file does not fit its own scenario "
-                                       "(damaged, or changed by hand)", path, expected.name, column.name));
+            throw RunError(
+                fmt::format("{}: table '{}' has no column '{}': the file does not fit its own scenario "
+                            "(damaged, or changed by hand)",
+                            path, expected.name, column.name));
         }
         if (at->type != column.type || at->labels != column.labels) {
-            throw RunError(fmt::format("{}: column '{}' of table '{}' is not of the type that the scenario asks for",
-                                       path, column.name, expected.name));
+            throw RunError(
+                fmt::format("{}: column '{}' of table '{}' is not of the type that the scenario asks for", path,
+                            column.name, expected.name));
         }
     }
 }
@@ -36,7 +39,8 @@ void check_keys(const Batch& batch, std::size_t row, std::size_t regime, std::ui
     const auto literature_found = std::get<std::vector<std::int32_t>>(batch.columns[2])[row];
     // Numbers beyond 2^31 wrap around, as they did when written.
     if (regime_found != regime || static_cast<std::uint32_t>(literature_found) != literature) {
-        throw RunError(fmt::format("{}: the rows of 'literatures' are not in order at literature {}", path, literature));
+        throw RunError(
+            fmt::format("{}: the rows of 'literatures' are not in order at literature {}", path, literature));
     }
 }
 
@@ -63,7 +67,8 @@ void read_literatures(const OutcomeReader& file, const std::string& path, const 
         throw RunError(fmt::format("{}: the rows of 'literatures' do not come in whole literatures", path));
     }
     const std::size_t statistics = expected.columns.size() - literature_keys;
-    const std::size_t chunk = std::max<std::size_t>(1, doubles_at_once / expected.columns.size() / regimes) * regimes;
+    const std::size_t chunk =
+        std::max<std::size_t>(1, doubles_at_once / expected.columns.size() / regimes) * regimes;
     std::vector<std::vector<double>> rows(regimes, std::vector<double>(statistics));
     std::uint64_t literature = 0;
     read_table(file, expected, chunk, [&](const Batch& batch) {

@@ -14,8 +14,10 @@ void put_values(Json& to, const Estimate& estimate, const std::optional<Spread>&
     to["literatures"] = estimate.n;
     Json& quantiles = to["spread"] = nullptr;
     if (!spread) return;
-    quantiles = {{"p05", json_number(spread->p05)}, {"p25", json_number(spread->p25)},
-                 {"p50", json_number(spread->p50)}, {"p75", json_number(spread->p75)},
+    quantiles = {{"p05", json_number(spread->p05)},
+                 {"p25", json_number(spread->p25)},
+                 {"p50", json_number(spread->p50)},
+                 {"p75", json_number(spread->p75)},
                  {"p95", json_number(spread->p95)}};
 }
 
@@ -27,8 +29,11 @@ Json json_number(std::optional<double> value) {
 }
 
 Json json_entry(const Results& all, const Result& result) {
-    Json one{{"metric", result.metric}, {"scope", scope_text(result.scope)}, {"regime", all.regimes[result.regime]},
-             {"point", 0},              {"stratum", result.stratum}};
+    Json one{{"metric", result.metric},
+             {"scope", scope_text(result.scope)},
+             {"regime", all.regimes[result.regime]},
+             {"point", 0},
+             {"stratum", result.stratum}};
     put_values(one, result.estimate, result.spread);
     return one;
 }
@@ -44,6 +49,8 @@ Json json_entry(const Results& all, const PairedDifference& difference) {
     return one;
 }
 
-std::string json_text(const Json& value) { return value.dump(2, ' ', false, Json::error_handler_t::replace) + '\n'; }
+std::string json_text(const Json& value) {
+    return value.dump(2, ' ', false, Json::error_handler_t::replace) + '\n';
+}
 
 }  // namespace lacuna

@@ -13,7 +13,8 @@ std::string values_csv(const Estimate& estimate, const std::optional<Spread>& sp
     std::string text =
         exact_number(estimate.value) + ',' + exact_number(estimate.mcse) + ',' + std::to_string(estimate.n);
     if (!spread) return text + ",,,,,\r\n";
-    for (double q : {spread->p05, spread->p25, spread->p50, spread->p75, spread->p95}) text += ',' + exact_number(q);
+    for (double q : {spread->p05, spread->p25, spread->p50, spread->p75, spread->p95})
+        text += ',' + exact_number(q);
     return text + "\r\n";
 }
 
@@ -32,10 +33,13 @@ std::string line(const Results& all, const PairedDifference& d) {
 }  // namespace
 
 std::string results_json(const Results& results, const std::string& version) {
-    Json all{{"lacuna", version}, {"digest", results.digest}, {"results", Json::array()},
+    Json all{{"lacuna", version},
+             {"digest", results.digest},
+             {"results", Json::array()},
              {"differences", Json::array()}};
     for (const Result& result : results.results) all["results"].push_back(json_entry(results, result));
-    for (const PairedDifference& each : results.differences) all["differences"].push_back(json_entry(results, each));
+    for (const PairedDifference& each : results.differences)
+        all["differences"].push_back(json_entry(results, each));
     return json_text(all);
 }
 

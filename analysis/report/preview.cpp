@@ -53,8 +53,10 @@ std::string designs_text(const Preview& preview) {
         Rows rows = design_rows(preview, regime);
         const auto same = [&](const auto& group) { return group.second == rows; };
         const auto found = std::find_if(groups.begin(), groups.end(), same);
-        if (found == groups.end()) groups.emplace_back(regime, std::move(rows));
-        else found->first += ", " + regime;
+        if (found == groups.end())
+            groups.emplace_back(regime, std::move(rows));
+        else
+            found->first += ", " + regime;
     }
     for (const auto& [names, rows] : groups) {
         if (groups.size() > 1) table.rows.push_back({names});
@@ -89,8 +91,9 @@ std::string changes_text(const Preview& preview) {
 }
 
 std::string size_text(const SizePreview& size) {
-    return fmt::format("\nSize: about {} studies, {} s, {} of memory, {} on disk\n", show_count(std::round(size.studies)),
-                       show_number(size.seconds, 2), show_bytes(size.memory_bytes), show_bytes(size.file_bytes));
+    return fmt::format("\nSize: about {} studies, {} s, {} of memory, {} on disk\n",
+                       show_count(std::round(size.studies)), show_number(size.seconds, 2),
+                       show_bytes(size.memory_bytes), show_bytes(size.file_bytes));
 }
 
 std::string expected_text(const Preview& preview) {
@@ -107,7 +110,8 @@ std::string expected_text(const Preview& preview) {
                                             : fmt::format("  {} {}", first.metric, first.stratum);
             for (; at < preview.expected.size(); ++at) {
                 const Result& each = preview.expected[at];
-                if (each.metric != first.metric || each.scope != first.scope || each.stratum != first.stratum) break;
+                if (each.metric != first.metric || each.scope != first.scope || each.stratum != first.stratum)
+                    break;
                 if (each.estimate.value) row[1 + each.regime] = show_number(*each.estimate.value, 6);
             }
             if (first.scope != scope) continue;

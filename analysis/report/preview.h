@@ -37,7 +37,7 @@ struct Preview {
     std::vector<std::string> changes;    // what differs between regimes, one a line
     std::vector<DesignPreview> designs;  // by regime, then lab kind
     SizePreview size;
-    std::vector<Result> expected;        // exact values (mcse 0), metric by metric with the regimes within
+    std::vector<Result> expected;  // exact values (mcse 0), metric by metric with the regimes within
     std::vector<std::pair<std::string, std::string>> untractable;  // regime, why it has no exact values
 };
 

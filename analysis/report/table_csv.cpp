@@ -21,8 +21,10 @@ void put_cell(Buffer& out, const ColumnSpec& spec, const ColumnData& column, std
         fmt::format_to(end, "{}", (*integers)[row]);
     } else {
         const std::uint8_t code = std::get<std::vector<std::uint8_t>>(column)[row];
-        if (code < spec.labels.size()) fmt::format_to(end, "{}", csv_field(spec.labels[code]));
-        else fmt::format_to(end, "{}", code);
+        if (code < spec.labels.size())
+            fmt::format_to(end, "{}", csv_field(spec.labels[code]));
+        else
+            fmt::format_to(end, "{}", code);
     }
 }
 

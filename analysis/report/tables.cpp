@@ -52,7 +52,8 @@ std::string legend(const Shown& shown) {
     }
     if (shown.no_error) text += "without ±: fewer than two literatures entered, so the error cannot be known.\n";
     if (shown.missing) {
-        text += fmt::format("{}: missing; no literature holds anything of the kind (empty denominator).\n", missing_sign);
+        text += fmt::format("{}: missing; no literature holds anything of the kind (empty denominator).\n",
+                            missing_sign);
     }
     return text;
 }

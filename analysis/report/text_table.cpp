@@ -23,8 +23,10 @@ std::string printable(std::string text) {
 std::vector<std::string> lines_of(const std::string& text) {
     std::vector<std::string> lines(1);
     for (char byte : text) {
-        if (byte == '\n') lines.emplace_back();
-        else lines.back() += byte;
+        if (byte == '\n')
+            lines.emplace_back();
+        else
+            lines.back() += byte;
     }
     return lines;
 }
@@ -103,7 +105,8 @@ std::vector<std::string> broken(const std::string& text, std::size_t width) {
     std::vector<std::string> lines(1);
     std::string word;
     const auto flush = [&] {
-        if (!lines.back().empty() && shown_width(lines.back()) + 1 + shown_width(word) > width) lines.emplace_back();
+        if (!lines.back().empty() && shown_width(lines.back()) + 1 + shown_width(word) > width)
+            lines.emplace_back();
         if (!lines.back().empty()) lines.back() += ' ';
         lines.back() += word;
         word.clear();

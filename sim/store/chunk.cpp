@@ -29,7 +29,7 @@ std::vector<unsigned char> shuffled(const std::vector<unsigned char>& raw, std::
 /// Deflated bytes (zlib format, ISA-L's level 1), empty when they would not be smaller than `most`.
 std::vector<unsigned char> deflated(const std::vector<unsigned char>& from, std::size_t most) {
     std::vector<unsigned char> out(most), work(ISAL_DEF_LVL1_DEFAULT);
-    isal_zstream stream;
+    isal_zstream stream{};  // the next call leaves the window's size as it finds it, and with it the output
     isal_deflate_stateless_init(&stream);
     stream.end_of_stream = 1;
     stream.flush = NO_FLUSH;

@@ -89,10 +89,12 @@ H5FD_class_t driver_class() {
 
 }  // namespace
 
-Handle create_hdf5(GuardedFile& bytes, hid_t creation, hid_t access, const std::string& path) {
+Handle guarded_driver() {
     const H5FD_class_t description = driver_class();
-    // The file keeps the driver alive after this handle.
-    const Handle driver = checked(H5FDregister(&description), H5FDunregister, path);
+    return checked(H5FDregister(&description), H5FDunregister, "cannot register a file driver");
+}
+
+Handle create_hdf5(GuardedFile& bytes, const Handle& driver, hid_t creation, hid_t access, const std::string& path) {
     GuardedFile* const info = &bytes;
     check(H5Pset_driver(access, driver.id(), &info), path);
     Handle file = checked(H5Fcreate(path.c_str(), H5F_ACC_TRUNC, creation, access), H5Fclose, "cannot create " + path);

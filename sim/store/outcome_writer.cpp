@@ -30,14 +30,14 @@ constexpr std::size_t chunks_at_once = 64;  // encoded and waiting to be written
 }
 
 /// File creation without time stamps, so that equal runs are equal bytes.
-Handle create_file(GuardedFile& bytes, const std::string& path) {
+Handle create_file(GuardedFile& bytes, const Handle& driver, const std::string& path) {
     const Handle creation = checked(H5Pcreate(H5P_FILE_CREATE), H5Pclose, path);
     check(H5Pset_obj_track_times(creation.id(), false), path);
     const Handle access = checked(H5Pcreate(H5P_FILE_ACCESS), H5Pclose, path);
     // Small tables have many columns; the newer layout keeps each one's overhead to a few hundred bytes.
     check(H5Pset_libver_bounds(access.id(), H5F_LIBVER_V110, H5F_LIBVER_V110), path);
     check(H5Pset_fclose_degree(access.id(), H5F_CLOSE_STRONG), path);
-    return create_hdf5(bytes, creation.id(), access.id(), path);
+    return create_hdf5(bytes, driver, creation.id(), access.id(), path);
 }
 
 void create_group(hid_t file, const std::string& name) {
@@ -79,7 +79,8 @@ public:
         silence_hdf5();
         bytes_.emplace(partial_, path);
         try {
-            file_ = create_file(*bytes_, partial_);
+            driver_ = guarded_driver();
+            file_ = create_file(*bytes_, driver_, partial_);
             open(facts, std::move(tables));
         } catch (...) {
             abandon();
@@ -185,7 +186,7 @@ private:
     bool compress_;
     ParallelFor parallel_for_;
     std::optional<GuardedFile> bytes_;
-    Handle file_;
+    Handle driver_, file_;
     std::vector<Table> tables_;
     bool placed_ = false;
 };

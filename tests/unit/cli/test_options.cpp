@@ -16,10 +16,10 @@ Invocation parse(std::vector<const char*> arguments) {
 }  // namespace
 
 TEST_CASE("options of run are read, and --set takes one argument", "[options]") {
-    const Options options = *parse({"run", "--set", "a.b=1", "c.toml", "--set=c=\"x=y\"", "--seed", "-5", "--threads",
-                                    "7", "--format", "json", "-o", "x.h5", "--overwrite", "--quiet", "--progress",
-                                    "never", "--literatures", "9"})
-                                 .options;
+    const Options options =
+        *parse({"run", "--set", "a.b=1", "c.toml", "--set=c=\"x=y\"", "--seed", "-5", "--threads", "7", "--format",
+                "json", "-o", "x.h5", "--overwrite", "--quiet", "--progress", "never", "--literatures", "9"})
+             .options;
     CHECK(options.command == Command::run);
     CHECK(options.input == "c.toml");
     CHECK(options.output == "x.h5");

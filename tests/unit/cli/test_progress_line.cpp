@@ -15,7 +15,8 @@ TEST_CASE("progress says share, literatures, rate and time left", "[progress]") 
 TEST_CASE("the line appears at most five times a second and is erased", "[progress]") {
     double now = 0.0;
     std::vector<std::string> written;
-    ProgressLine line(true, true, [&] { return now; }, [&](const std::string& text) { written.push_back(text); });
+    ProgressLine line(
+        true, true, [&] { return now; }, [&](const std::string& text) { written.push_back(text); });
     for (int i = 1; i <= 1000; ++i) {
         now = i * 0.001;
         line.update({1, 2, 3, 4.0});

@@ -1,7 +1,6 @@
 // Standard errors of ratios and of paired differences.
-#include <catch2/catch.hpp>
-
 #include <algorithm>
+#include <catch2/catch.hpp>
 #include <cmath>
 #include <fstream>
 #include <map>
@@ -56,7 +55,8 @@ std::vector<Rows> random_literatures(unsigned seed, int count, double rate, doub
 
 }  // namespace
 
-TEST_CASE("ratio and paired difference of three literatures (values by NumPy from the definitions)", "[accumulator]") {
+TEST_CASE("ratio and paired difference of three literatures (values by NumPy from the definitions)",
+          "[accumulator]") {
     const Accumulator all = accumulate({{{3, 10}, {4, 8}}, {{5, 12}, {5, 10}}, {{2, 9}, {1, 9}}});
     const Result ratio = all.results()[0];
     CHECK(*ratio.estimate.value == Approx(0.3225806451612903).epsilon(1e-14));
@@ -173,8 +173,7 @@ TEST_CASE("one literature: a value without a standard error or spread", "[accumu
 
 TEST_CASE("literatures with an empty denominator do not enter", "[accumulator]") {
     // The mean of 1, 2 and 6 with its error sqrt(7 / 3), whatever stands between them.
-    const Accumulator all =
-        accumulate({{{0, 0}}, {{1, 1}}, {{0, 0}}, {{2, 1}}, {{6, 1}}, {{0, 0}}, {{0, 0}}});
+    const Accumulator all = accumulate({{{0, 0}}, {{1, 1}}, {{0, 0}}, {{2, 1}}, {{6, 1}}, {{0, 0}}, {{0, 0}}});
     CHECK(*all.results()[0].estimate.value == 3.0);
     CHECK(*all.results()[0].estimate.mcse == Approx(std::sqrt(7.0 / 3.0)).epsilon(1e-14));
     CHECK(all.results()[0].estimate.n == 3);

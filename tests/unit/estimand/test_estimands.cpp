@@ -1,6 +1,5 @@
 // Every estimand on one small literature whose rates can be counted on paper.
 #include <catch2/catch.hpp>
-
 #include <cmath>
 #include <limits>
 #include <set>
@@ -30,9 +29,11 @@ RowBuilder paper_literature() {
     fill(Scope::published, Truth::null, 3, 1, 1);
     fill(Scope::published, Truth::real, 1, 6, 0);
     fill(Scope::published, Truth::real_negative, 0, 1, 2);
-    row.sums(Scope::conducted, Claim::positive, 4.2, 5.4, 3.5).sums(Scope::conducted, Claim::reversed, 0.9, 2.1, 1.5);
+    row.sums(Scope::conducted, Claim::positive, 4.2, 5.4, 3.5)
+        .sums(Scope::conducted, Claim::reversed, 0.9, 2.1, 1.5);
     row.sums(Scope::conducted, Claim::inconclusive, 0.6, 1.0, 2.0);
-    row.sums(Scope::published, Claim::positive, 4.2, 5.4, 3.5).sums(Scope::published, Claim::reversed, 1.5, 1.5, 1.0);
+    row.sums(Scope::published, Claim::positive, 4.2, 5.4, 3.5)
+        .sums(Scope::published, Claim::reversed, 1.5, 1.5, 1.0);
     row.sums(Scope::published, Claim::inconclusive, 0.3, 0.3, 0.5);
     row.participants(Scope::conducted, 1360).participants(Scope::published, 600);
     row.manuscripts(Scope::conducted, false, ManuscriptClass::supportive, 2)

@@ -1,5 +1,4 @@
 #include <catch2/catch.hpp>
-
 #include <cmath>
 #include <limits>
 
@@ -13,7 +12,7 @@ TEST_CASE("a value is shown to the place of its error's second digit", "[report]
     CHECK(show({72034.27, 12.31, 9}) == "72034 ± 12");
     CHECK(show({-0.00003, 0.0012, 9}) == "0.0000 ± 0.0012");
     CHECK(show({0.00031152, 0.0000843, 9}) == "0.000312 ± 0.000084");
-    CHECK(show({1.51234567890, 1.2e-7, 9}) == "1.5123457 ± 1.2e-07");
+    CHECK(show({1.51234567890, 1.2e-7, 9}) == "1.51234568 ± 1.2e-07");
     CHECK(show({2.5e-8, 1.2e-8, 9}) == "2.5e-08 ± 1.2e-08");
     CHECK(show({0.0, 0.0, 9}) == "0 ± 0");
     CHECK(show({1.0, 0.0, 9}) == "1.000 ± 0");

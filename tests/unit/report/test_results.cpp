@@ -1,5 +1,4 @@
 #include <catch2/catch.hpp>
-
 #include <nlohmann/json.hpp>
 #include <sstream>
 
@@ -20,9 +19,12 @@ std::vector<std::vector<std::string>> parse_csv(const std::string& text) {
         const char byte = text[i];
         std::string& field = rows.back().back();
         if (quoted) {
-            if (byte != '"') field += byte;
-            else if (i + 1 < text.size() && text[i + 1] == '"') field += text[++i];
-            else quoted = false;
+            if (byte != '"')
+                field += byte;
+            else if (i + 1 < text.size() && text[i + 1] == '"')
+                field += text[++i];
+            else
+                quoted = false;
         } else if (byte == '"') {
             quoted = true;
         } else if (byte == ',') {
@@ -72,8 +74,8 @@ TEST_CASE("CSV is tidy, quoted where needed, and empty where missing", "[report]
     for (const auto& row : rows) CHECK(row.size() == rows[0].size());
     CHECK(rows[2][2] == "blind, \"all\"");
     CHECK(std::stod(rows[4][5]) == 1.0 / 3);
-    CHECK(rows[5] == std::vector<std::string>{"power", "published", "standing rules", "0", "all", "", "", "0", "", "",
-                                              "", "", ""});
+    CHECK(rows[5] == std::vector<std::string>{"power", "published", "standing rules", "0", "all", "", "", "0", "",
+                                              "", "", "", ""});
     const auto differences = parse_csv(differences_csv(sample_results()));
     REQUIRE(differences.size() == 5);
     CHECK(differences[0][3] == "against");

@@ -1,6 +1,5 @@
-#include <catch2/catch.hpp>
-
 #include <algorithm>
+#include <catch2/catch.hpp>
 #include <sstream>
 
 #include "analysis/report/text_table.h"
