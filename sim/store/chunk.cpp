@@ -26,10 +26,13 @@ std::vector<unsigned char> shuffled(const std::vector<unsigned char>& raw, std::
     return out;
 }
 
-/// Deflated bytes (zlib format, ISA-L's level 1), empty when they would not be smaller than `most`.
+/// Deflated bytes (zlib format, ISA-L's level 1), empty when they would not be smaller than `most`. About one
+/// chunk in ten thousand comes out in another, equivalent encoding, by where the process lies in memory.
 std::vector<unsigned char> deflated(const std::vector<unsigned char>& from, std::size_t most) {
-    std::vector<unsigned char> out(most), work(ISAL_DEF_LVL1_DEFAULT);
-    isal_zstream stream{};  // the next call leaves the window's size as it finds it, and with it the output
+    // The compressor looks a few bytes beyond the end, and what it finds there may change its choices: zeros.
+    std::vector<unsigned char> in(from.size() + 64, 0), out(most), work(ISAL_DEF_LVL1_DEFAULT);
+    std::copy(from.begin(), from.end(), in.begin());
+    isal_zstream stream{};  // the next call leaves the window's size as it finds it
     isal_deflate_stateless_init(&stream);
     stream.end_of_stream = 1;
     stream.flush = NO_FLUSH;
@@ -37,7 +40,7 @@ std::vector<unsigned char> deflated(const std::vector<unsigned char>& from, std:
     stream.level = 1;
     stream.level_buf = work.data();
     stream.level_buf_size = static_cast<std::uint32_t>(work.size());
-    stream.next_in = const_cast<unsigned char*>(from.data());  // read only, in an interface without const
+    stream.next_in = in.data();
     stream.avail_in = static_cast<std::uint32_t>(from.size());
     stream.next_out = out.data();
     stream.avail_out = static_cast<std::uint32_t>(out.size());

@@ -27,7 +27,8 @@ ColumnType plain_type(hid_t type, const std::string& path) {
 
 std::vector<std::string> labels_of(hid_t type, const std::string& path) {
     const int count = H5Tget_nmembers(type);
-    if (count < 0 || count > most_labels || H5Tget_size(type) != 1) throw RunError(path + ": is an enumeration of another kind");
+    if (count < 0 || count > most_labels || H5Tget_size(type) != 1)
+        throw RunError(path + ": is an enumeration of another kind");
     std::vector<std::string> labels(static_cast<std::size_t>(count));
     for (int i = 0; i < count; ++i) {
         unsigned char code = 0;
@@ -46,7 +47,8 @@ std::vector<std::string> labels_of(hid_t type, const std::string& path) {
 void check_chunk(hid_t properties, std::size_t value_bytes, const std::string& path) {
     hsize_t rows[H5S_MAX_RANK] = {};
     if (H5Pget_chunk(properties, H5S_MAX_RANK, rows) != 1) throw RunError(path + ": is not one-dimensional");
-    if (rows[0] > largest_chunk / value_bytes) throw RunError(fmt::format("{}: is stored in pieces of {} rows, which are too large", path, rows[0]));
+    if (rows[0] > largest_chunk / value_bytes)
+        throw RunError(fmt::format("{}: is stored in pieces of {} rows, which are too large", path, rows[0]));
 }
 
 void check_storage(hid_t dataset, std::size_t value_bytes, const std::string& path) {
@@ -56,11 +58,13 @@ void check_storage(hid_t dataset, std::size_t value_bytes, const std::string& pa
         throw RunError(path + ": is stored in a way that outcome files do not use");
     }
     if (layout == H5D_CHUNKED) check_chunk(properties.id(), value_bytes, path);
-    if (H5Pget_external_count(properties.id()) != 0) throw RunError(path + ": keeps its values in another file, which is not read");
+    if (H5Pget_external_count(properties.id()) != 0)
+        throw RunError(path + ": keeps its values in another file, which is not read");
     for (int i = 0; i < H5Pget_nfilters(properties.id()); ++i) {
         unsigned flags = 0, config = 0;
         std::size_t values = 0;
-        const H5Z_filter_t filter = H5Pget_filter2(properties.id(), static_cast<unsigned>(i), &flags, &values, nullptr, 0, nullptr, &config);
+        const H5Z_filter_t filter = H5Pget_filter2(properties.id(), static_cast<unsigned>(i), &flags, &values,
+                                                   nullptr, 0, nullptr, &config);
         if (filter != H5Z_FILTER_SHUFFLE && filter != H5Z_FILTER_DEFLATE && filter != H5Z_FILTER_FLETCHER32) {
             throw RunError(path + ": is compressed in a way that outcome files do not use");
         }
@@ -75,7 +79,8 @@ std::size_t rows_of(hid_t dataset, std::size_t value_bytes, std::uint64_t file_b
     if (rows > file_bytes * most_bytes_from_one / value_bytes) {
         throw RunError(fmt::format("{}: says it has {} rows, more than the file can hold", path, rows));
     }
-    if (rows > 0 && H5Dget_storage_size(dataset) == 0) throw RunError(path + ": says it has rows, but nothing is stored");
+    if (rows > 0 && H5Dget_storage_size(dataset) == 0)
+        throw RunError(path + ": says it has rows, but nothing is stored");
     return rows;
 }
 
@@ -89,9 +94,12 @@ void check_codes(const ColumnData& data, std::size_t labels, const std::string& 
 
 hid_t memory_type(ColumnType type, hid_t file_type) {
     switch (type) {
-        case ColumnType::u8: return H5Tget_class(file_type) == H5T_ENUM ? file_type : H5T_NATIVE_UINT8;
-        case ColumnType::i32: return H5T_NATIVE_INT32;
-        case ColumnType::f64: return H5T_NATIVE_DOUBLE;
+        case ColumnType::u8:
+            return H5Tget_class(file_type) == H5T_ENUM ? file_type : H5T_NATIVE_UINT8;
+        case ColumnType::i32:
+            return H5T_NATIVE_INT32;
+        case ColumnType::f64:
+            return H5T_NATIVE_DOUBLE;
     }
     throw Defect("memory_type: unknown column type");
 }
@@ -130,8 +138,8 @@ ColumnData read_rows(const ColumnReader& column, std::size_t first, std::size_t 
     const Handle type = checked(H5Dget_type(column.dataset.id()), H5Tclose, name);
     std::visit(
         [&](auto& values) {
-            check(H5Dread(column.dataset.id(), memory_type(column.spec.type, type.id()), to.id(), from.id(), H5P_DEFAULT,
-                          values.data()),
+            check(H5Dread(column.dataset.id(), memory_type(column.spec.type, type.id()), to.id(), from.id(),
+                          H5P_DEFAULT, values.data()),
                   "cannot read column " + name);
         },
         data);

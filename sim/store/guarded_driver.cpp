@@ -94,10 +94,12 @@ Handle guarded_driver() {
     return checked(H5FDregister(&description), H5FDunregister, "cannot register a file driver");
 }
 
-Handle create_hdf5(GuardedFile& bytes, const Handle& driver, hid_t creation, hid_t access, const std::string& path) {
+Handle create_hdf5(GuardedFile& bytes, const Handle& driver, hid_t creation, hid_t access,
+                   const std::string& path) {
     GuardedFile* const info = &bytes;
     check(H5Pset_driver(access, driver.id(), &info), path);
-    Handle file = checked(H5Fcreate(path.c_str(), H5F_ACC_TRUNC, creation, access), H5Fclose, "cannot create " + path);
+    Handle file =
+        checked(H5Fcreate(path.c_str(), H5F_ACC_TRUNC, creation, access), H5Fclose, "cannot create " + path);
     bytes.check();
     return file;
 }

@@ -16,13 +16,17 @@ namespace {
 std::string message(const std::string& path, int error) {
     switch (error) {
         case ENOSPC:
-            return fmt::format("disk full: cannot write {} ({}): free space, or write elsewhere with -o", path, std::strerror(error));
-        case EDQUOT:
-            return fmt::format("disk full: cannot write {} ({}): free some of your quota, or write elsewhere with -o", path,
+            return fmt::format("disk full: cannot write {} ({}): free space, or write elsewhere with -o", path,
                                std::strerror(error));
+        case EDQUOT:
+            return fmt::format(
+                "disk full: cannot write {} ({}): free some of your quota, or write elsewhere with -o", path,
+                std::strerror(error));
         case EFBIG:
-            return fmt::format("cannot write {} ({}): raise the limit on file sizes (ulimit -f)", path, std::strerror(error));
-        default: return fmt::format("cannot write {} ({}): write elsewhere with -o", path, std::strerror(error));
+            return fmt::format("cannot write {} ({}): raise the limit on file sizes (ulimit -f)", path,
+                               std::strerror(error));
+        default:
+            return fmt::format("cannot write {} ({}): write elsewhere with -o", path, std::strerror(error));
     }
 }
 

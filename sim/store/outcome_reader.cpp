@@ -26,8 +26,10 @@ std::vector<std::string> links_of(hid_t group, const std::string& path) {
     const auto add = [](hid_t, const char* name, const H5L_info_t* info, void* out) -> herr_t {
         auto& list = *static_cast<Found*>(out);
         // A path as a name would be followed through other groups, and through what they link to.
-        if (info->type == H5L_TYPE_HARD && std::string_view(name).find('/') == std::string_view::npos) list.names.emplace_back(name);
-        else list.foreign = true;
+        if (info->type == H5L_TYPE_HARD && std::string_view(name).find('/') == std::string_view::npos)
+            list.names.emplace_back(name);
+        else
+            list.foreign = true;
         return 0;
     };
     check(H5Literate(group, H5_INDEX_NAME, H5_ITER_INC, nullptr, add, &found), path);
@@ -54,13 +56,16 @@ Handle open_file(const std::string& path) {
     const htri_t is_hdf5 = H5Fis_hdf5(path.c_str());
     if (is_hdf5 <= 0) {
         H5Eclear2(H5E_DEFAULT);
-        throw RunError(fmt::format("{}: is not an HDF5 file, so no outcome file (`lacuna run` writes those)", path));
+        throw RunError(
+            fmt::format("{}: is not an HDF5 file, so no outcome file (`lacuna run` writes those)", path));
     }
     // Finished files do not change, and some network file systems have no locks.
     const Handle access = checked(H5Pcreate(H5P_FILE_ACCESS), H5Pclose, path);
     check(H5Pset_file_locking(access.id(), false, true), path);
     const hid_t id = H5Fopen(path.c_str(), H5F_ACC_RDONLY, access.id());
-    if (id < 0) throw RunError(fmt::format("{}: cannot be opened, it may be cut short or still being written ({})", path, hdf5_reason()));
+    if (id < 0)
+        throw RunError(fmt::format("{}: cannot be opened, it may be cut short or still being written ({})", path,
+                                   hdf5_reason()));
     return {id, H5Fclose};
 }
 
@@ -70,8 +75,9 @@ void check_format(hid_t file, const std::string& path) {
     }
     const std::int32_t version = read_integer(file, "format_version", 0);
     if (version > outcome_format_version) {
-        throw RunError(fmt::format("{}: was written by a newer lacuna (format {}); this one reads up to {}: use a newer program",
-                                   path, version, outcome_format_version));
+        throw RunError(fmt::format(
+            "{}: was written by a newer lacuna (format {}); this one reads up to {}: use a newer program", path,
+            version, outcome_format_version));
     }
     if (version < 1) throw RunError(fmt::format("{}: has no valid format version, it is damaged", path));
 }
@@ -139,7 +145,8 @@ std::uint64_t OutcomeReader::literatures_planned() const { return content_->plan
 const std::vector<TableSpec>& OutcomeReader::tables() const { return content_->specs; }
 
 bool OutcomeReader::has(const std::string& table) const {
-    return std::any_of(content_->specs.begin(), content_->specs.end(), [&](const TableSpec& t) { return t.name == table; });
+    return std::any_of(content_->specs.begin(), content_->specs.end(),
+                       [&](const TableSpec& t) { return t.name == table; });
 }
 
 std::size_t OutcomeReader::rows(const std::string& table) const {
@@ -162,7 +169,8 @@ ColumnData OutcomeReader::read(const std::string& table, const std::string& colu
         try {
             return read_rows(its, first, count);
         } catch (const RunError& error) {
-            throw RunError(fmt::format("{}: table '{}': {}; the file is damaged", content_->path, table, error.what()));
+            throw RunError(
+                fmt::format("{}: table '{}': {}; the file is damaged", content_->path, table, error.what()));
         }
     }
     throw RunError(fmt::format("{}: table '{}' has no column '{}'", content_->path, table, column));
@@ -179,7 +187,8 @@ std::string payload_digest(const OutcomeReader& file) {
                 const ColumnData data = file.read(table.name, column.name, first, std::min(stretch, rows - first));
                 std::visit(
                     [&](const auto& values) {
-                        parts += sha256_hex({reinterpret_cast<const char*>(values.data()), values.size() * sizeof(values[0])});
+                        parts += sha256_hex(
+                            {reinterpret_cast<const char*>(values.data()), values.size() * sizeof(values[0])});
                     },
                     data);
             }

@@ -61,17 +61,21 @@ void check_output(const std::string& path, bool overwrite) {
     if (fs::exists(status) && !overwrite) {
         refuse(path, "is there already", "give --overwrite to replace it, or another name with -o");
     }
-    if (fs::exists(status) && !fs::is_regular_file(status)) refuse(path, "is not a regular file", "give another name with -o");
+    if (fs::exists(status) && !fs::is_regular_file(status))
+        refuse(path, "is not a regular file", "give another name with -o");
     const std::string parent = parent_of(path);
-    if (!fs::is_directory(parent, error)) refuse(path, fmt::format("there is no directory {}", parent), "make it first");
+    if (!fs::is_directory(parent, error))
+        refuse(path, fmt::format("there is no directory {}", parent), "make it first");
     if (::access(parent.c_str(), W_OK | X_OK) != 0) {
-        refuse(path, fmt::format("cannot write in {}: {}", parent, std::strerror(errno)), "write elsewhere with -o");
+        refuse(path, fmt::format("cannot write in {}: {}", parent, std::strerror(errno)),
+               "write elsewhere with -o");
     }
 }
 
 class OutcomeWriter::File {
 public:
-    File(const std::string& path, const FileFacts& facts, std::vector<TableSpec> tables, bool compress, ParallelFor loop)
+    File(const std::string& path, const FileFacts& facts, std::vector<TableSpec> tables, bool compress,
+         ParallelFor loop)
         : path_(path),
           partial_(fmt::format("{}.partial-{}", path, ::getpid())),
           compress_(compress),
@@ -94,7 +98,8 @@ public:
 
     void append(const std::string& name, const Batch& rows) {
         silence_hdf5();  // the caller's thread may be another one each time
-        const auto at = std::find_if(tables_.begin(), tables_.end(), [&](const Table& t) { return t.spec.name == name; });
+        const auto at =
+            std::find_if(tables_.begin(), tables_.end(), [&](const Table& t) { return t.spec.name == name; });
         if (at == tables_.end()) throw Defect("OutcomeWriter: no table " + name);
         lacuna::append(at->waiting, rows);
         const std::size_t whole = at->waiting.rows / chunk_rows;
@@ -106,7 +111,8 @@ public:
     void finish(bool complete, std::uint64_t done, std::uint64_t planned) {
         silence_hdf5();
         for (Table& table : tables_) {
-            write_rows(table, table.waiting.rows, ColumnWriter::rows_of_chunk(table.created ? chunk_rows : table.waiting.rows));
+            write_rows(table, table.waiting.rows,
+                       ColumnWriter::rows_of_chunk(table.created ? chunk_rows : table.waiting.rows));
         }
         write_integer(file_.id(), "complete", complete ? 1 : 0);
         write_text(file_.id(), "literatures_done", std::to_string(done));
@@ -146,7 +152,8 @@ private:
     /// Encodes and writes the first `rows` waiting rows of a table in chunks; all columns have as many.
     void write_rows(Table& table, std::size_t rows, std::size_t rows_in_chunk) {
         if (!table.created) {
-            for (ColumnWriter& column : table.columns) column.create(file_.id(), rows_in_chunk, rows_in_chunk == chunk_rows);
+            for (ColumnWriter& column : table.columns)
+                column.create(file_.id(), rows_in_chunk, rows_in_chunk == chunk_rows);
             table.created = true;
         }
         const std::size_t columns = table.columns.size();
@@ -157,8 +164,8 @@ private:
             std::vector<EncodedChunk> encoded(std::min(chunks_at_once, jobs - start));
             parallel_for_(encoded.size(), [&](std::size_t i) {
                 const std::size_t job = start + i;
-                encoded[i] = encode_chunk(table.waiting.columns[job % columns], first_row(job), count(job), rows_in_chunk,
-                                          compress_);
+                encoded[i] = encode_chunk(table.waiting.columns[job % columns], first_row(job), count(job),
+                                          rows_in_chunk, compress_);
             });
             for (std::size_t i = 0; i < encoded.size(); ++i) {
                 table.columns[(start + i) % columns].write(encoded[i], count(start + i));
@@ -169,8 +176,11 @@ private:
 
     static void drop_front(Batch& batch, std::size_t rows) {
         for (ColumnData& column : batch.columns) {
-            std::visit([&](auto& values) { values.erase(values.begin(), values.begin() + static_cast<std::ptrdiff_t>(rows)); },
-                       column);
+            std::visit(
+                [&](auto& values) {
+                    values.erase(values.begin(), values.begin() + static_cast<std::ptrdiff_t>(rows));
+                },
+                column);
         }
         batch.rows -= rows;
     }

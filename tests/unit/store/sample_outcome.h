@@ -1,12 +1,13 @@
 // A small outcome file with every kind of column, for the tests of the store.
 #pragma once
 
+#include <unistd.h>
+
 #include <cmath>
 #include <cstring>
 #include <filesystem>
 #include <fstream>
 #include <string>
-#include <unistd.h>
 
 #include "sim/base/fault.h"
 #include "sim/store/outcome_reader.h"
@@ -64,9 +65,11 @@ inline FileFacts facts() {
     return f;
 }
 
-inline void write(const std::string& path, std::size_t count, std::size_t batch, bool compress = true, bool overwrite = false) {
+inline void write(const std::string& path, std::size_t count, std::size_t batch, bool compress = true,
+                  bool overwrite = false) {
     OutcomeWriter writer(path, overwrite, facts(), {spec()}, compress, serial);
-    for (std::size_t first = 0; first < count; first += batch) writer.append("studies", rows(first, std::min(batch, count - first)));
+    for (std::size_t first = 0; first < count; first += batch)
+        writer.append("studies", rows(first, std::min(batch, count - first)));
     writer.finish(true, 3, 3);
 }
 

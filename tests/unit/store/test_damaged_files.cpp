@@ -1,7 +1,8 @@
-#include <catch2/catch.hpp>
-
-#include <csignal>
 #include <sys/wait.h>
+
+#include <catch2/catch.hpp>
+#include <csignal>
+
 #include "tests/unit/store/sample_outcome.h"
 
 using namespace lacuna;
@@ -18,7 +19,8 @@ TEST_CASE("Files that are no outcome files get one clear message", "[store]") {
     write(folder / "whole.h5", 100000, 100000);
     const std::string whole = bytes_of(folder / "whole.h5");
     for (const double share : {0.02, 0.3, 0.7, 0.99}) {
-        std::ofstream(folder / "cut.h5", std::ios::binary) << whole.substr(0, static_cast<std::size_t>(share * static_cast<double>(whole.size())));
+        std::ofstream(folder / "cut.h5", std::ios::binary)
+            << whole.substr(0, static_cast<std::size_t>(share * static_cast<double>(whole.size())));
         CHECK_FALSE(message_of(folder / "cut.h5").empty());
     }
 }

@@ -36,7 +36,8 @@ TEST_CASE("h5py reads every column with its units, names and values", "[store]")
     const Folder folder;
     const std::string path = folder / "out.h5";
     for (const bool compress : {true, false}) {
-        for (const std::size_t count : {std::size_t{0}, std::size_t{1}, std::size_t{1000}, chunk_rows, 2 * chunk_rows + 5}) {
+        for (const std::size_t count :
+             {std::size_t{0}, std::size_t{1}, std::size_t{1000}, chunk_rows, 2 * chunk_rows + 5}) {
             INFO(count << " rows, compressed: " << compress);
             write(path, count, 30'000, compress, true);
             CHECK_THAT(printed(python + (" " + scripts + "read_outcome.py " + path)), Catch::StartsWith("ok"));
@@ -75,7 +76,8 @@ TEST_CASE("A file by h5py in this format is read", "[store]") {
     const auto claim = std::get<0>(reader.read("studies", "claim"));
     const auto literature = std::get<1>(reader.read("studies", "literature"));
     const auto estimate = std::get<2>(reader.read("studies", "estimate"));
-    for (const std::size_t i : {std::size_t{0}, std::size_t{4}, std::size_t{65'535}, std::size_t{65'536}, std::size_t{69'999}}) {
+    for (const std::size_t i :
+         {std::size_t{0}, std::size_t{4}, std::size_t{65'535}, std::size_t{65'536}, std::size_t{69'999}}) {
         CHECK(claim[i] == i % 3);
         CHECK(literature[i] == static_cast<std::int32_t>(i / 7) - 5);
         CHECK(estimate[i] == 0.25 * static_cast<double>(i));

