@@ -49,7 +49,13 @@ Recording::Recording(const std::string& path, bool overwrite, const Scenario& sc
 
 void Recording::add_literature(std::uint32_t literature, const std::vector<std::vector<double>>& rows) {
     append_literature(pending_, literature, rows);
+    whole_rows_ = detail_rows_;
     if (pending_.rows >= rows_at_once) flush();
+}
+
+void Recording::add_rows(const std::string& table, const Batch& batch) {
+    writer_.append(table, batch);
+    detail_rows_[table] += batch.rows;
 }
 
 void Recording::flush() {
@@ -59,6 +65,9 @@ void Recording::flush() {
 
 void Recording::finish(bool complete, std::uint64_t literatures) {
     flush();
+    for (const auto& [table, rows] : detail_rows_) {
+        if (rows > whole_rows_[table]) writer_.keep_rows(table, whole_rows_[table]);
+    }
     writer_.finish(complete, literatures, planned_);
 }
 

@@ -2,6 +2,7 @@
 #pragma once
 
 #include <cstdint>
+#include <map>
 #include <string>
 #include <vector>
 
@@ -19,8 +20,9 @@ public:
               const BuildFacts& build);
 
     void add_literature(std::uint32_t literature, const std::vector<std::vector<double>>& rows);
-    void add_rows(const std::string& table, const Batch& batch) { writer_.append(table, batch); }
-    /// Writes what is pending and puts the file in place. `literatures`: how many are complete.
+    void add_rows(const std::string& table, const Batch& batch);
+    /// Writes what is pending and puts the file in place, without detail rows of a literature that was not
+    /// finished. `literatures`: how many are complete.
     void finish(bool complete, std::uint64_t literatures);
 
     const std::string& digest() const { return digest_; }
@@ -33,6 +35,7 @@ private:
     std::uint64_t planned_;
     TableSpec literatures_;
     Batch pending_;
+    std::map<std::string, std::uint64_t> detail_rows_, whole_rows_;  // so far; when a literature was last whole
     OutcomeWriter writer_;
 };
 

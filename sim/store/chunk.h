@@ -10,7 +10,7 @@
 
 namespace lacuna {
 
-/// Rows of a whole chunk.
+/// Rows of a whole chunk, but for wide tables.
 inline constexpr std::size_t chunk_rows = 65536;
 
 /// What goes into the file for one chunk, and which filters of the pipeline it skips (HDF5's mask).

@@ -59,4 +59,9 @@ void ColumnWriter::write(const EncodedChunk& chunk, std::size_t count) {
     check(H5Dwrite_chunk(dataset_.id(), H5P_DEFAULT, chunk.skipped, &offset, chunk.bytes.size(), chunk.bytes.data()), path_);
 }
 
+void ColumnWriter::cut(std::size_t rows) {
+    rows_ = rows;
+    check(H5Dset_extent(dataset_.id(), &rows_), path_);
+}
+
 }  // namespace lacuna

@@ -1,7 +1,6 @@
 // One column of a table in an HDF5 file: its dataset, made when its first chunk is ready.
 #pragma once
 
-#include <algorithm>
 #include <string>
 
 #include "sim/model/tables.h"
@@ -17,16 +16,17 @@ public:
 
     const ColumnSpec& spec() const { return spec_; }
 
-    /// Rows of a chunk for a column that will hold `rows` in all, or more than a chunk.
-    static std::size_t rows_of_chunk(std::size_t rows) { return rows < chunk_rows ? std::max<std::size_t>(rows, 1) : chunk_rows; }
-
     /// Makes the dataset with chunks of `rows_in_chunk`. Throws RunError.
     void create(hid_t file, std::size_t rows_in_chunk, bool grows);
 
     /// Writes a chunk that holds `count` rows, behind those before.
     void write(const EncodedChunk& chunk, std::size_t count);
 
-    bool created() const { return dataset_.open(); }
+    /// Rows written so far.
+    std::size_t rows() const { return rows_; }
+
+    /// Forgets the rows from `rows` on; nothing can be written behind them any more.
+    void cut(std::size_t rows);
 
 private:
     std::string path_;

@@ -19,6 +19,7 @@ namespace {
 
 namespace fs = std::filesystem;
 
+constexpr std::size_t most_waiting_bytes = 12u << 20;  // of a table
 constexpr std::size_t chunks_at_once = 64;  // encoded and waiting to be written, at most 32 MB
 
 [[noreturn]] void refuse(const std::string& path, std::string message, std::string remedy) {
@@ -102,17 +103,29 @@ public:
             std::find_if(tables_.begin(), tables_.end(), [&](const Table& t) { return t.spec.name == name; });
         if (at == tables_.end()) throw Defect("OutcomeWriter: no table " + name);
         lacuna::append(at->waiting, rows);
-        const std::size_t whole = at->waiting.rows / chunk_rows;
+        const std::size_t whole = at->waiting.rows / at->chunk;
         if (whole == 0) return;
-        write_rows(*at, whole * chunk_rows, chunk_rows);
-        drop_front(at->waiting, whole * chunk_rows);
+        write_rows(*at, whole * at->chunk, at->chunk);
+        drop_front(at->waiting, whole * at->chunk);
+    }
+
+    void keep_rows(const std::string& name, std::uint64_t rows) {
+        silence_hdf5();
+        for (Table& table : tables_) {
+            if (table.spec.name != name) continue;
+            const std::size_t written = table.created ? table.columns.front().rows() : 0;
+            if (rows < written) {
+                for (ColumnWriter& column : table.columns) column.cut(rows);
+            }
+            table.waiting = first_rows(table.waiting, rows > written ? rows - written : 0);
+        }
     }
 
     void finish(bool complete, std::uint64_t done, std::uint64_t planned) {
         silence_hdf5();
         for (Table& table : tables_) {
             write_rows(table, table.waiting.rows,
-                       ColumnWriter::rows_of_chunk(table.created ? chunk_rows : table.waiting.rows));
+                       table.created ? table.chunk : std::clamp<std::size_t>(table.waiting.rows, 1, table.chunk));
         }
         write_integer(file_.id(), "complete", complete ? 1 : 0);
         write_text(file_.id(), "literatures_done", std::to_string(done));
@@ -132,8 +145,25 @@ private:
         TableSpec spec;
         std::vector<ColumnWriter> columns;
         Batch waiting;
+        std::size_t chunk;  // rows
         bool created = false;
     };
+
+    /// Rows of a chunk: fewer for wide tables, since a chunk of every column waits in memory.
+    static std::size_t chunk_of(const TableSpec& spec) {
+        std::size_t row_bytes = 0;
+        for (const ColumnSpec& column : spec.columns) row_bytes += value_size(column.type);
+        std::size_t rows = chunk_rows;
+        while (rows > 1024 && rows * row_bytes > most_waiting_bytes) rows /= 2;
+        return rows;
+    }
+
+    static Batch first_rows(const Batch& batch, std::size_t rows) {
+        Batch kept = batch;
+        kept.rows = std::min(batch.rows, rows);
+        for (ColumnData& column : kept.columns) std::visit([&](auto& values) { values.resize(kept.rows); }, column);
+        return kept;
+    }
 
     void open(const FileFacts& facts, std::vector<TableSpec> tables) {
         write_text(file_.id(), "format", outcome_format);
@@ -141,7 +171,7 @@ private:
         for (const FactName& fact : fact_names) write_text(file_.id(), fact.name, facts.*fact.member);
         for (TableSpec& spec : tables) {
             create_group(file_.id(), spec.name);
-            Table table{spec, {}, empty_batch(spec)};
+            Table table{spec, {}, empty_batch(spec), chunk_of(spec)};
             for (const ColumnSpec& column : spec.columns) {
                 table.columns.emplace_back(spec.name + '/' + column.name, column, compress_);
             }
@@ -153,7 +183,7 @@ private:
     void write_rows(Table& table, std::size_t rows, std::size_t rows_in_chunk) {
         if (!table.created) {
             for (ColumnWriter& column : table.columns)
-                column.create(file_.id(), rows_in_chunk, rows_in_chunk == chunk_rows);
+                column.create(file_.id(), rows_in_chunk, rows_in_chunk == table.chunk);
             table.created = true;
         }
         const std::size_t columns = table.columns.size();
@@ -210,6 +240,8 @@ OutcomeWriter::OutcomeWriter(const std::string& path, bool overwrite, const File
 OutcomeWriter::~OutcomeWriter() = default;
 
 void OutcomeWriter::append(const std::string& table, const Batch& rows) { file_->append(table, rows); }
+
+void OutcomeWriter::keep_rows(const std::string& table, std::uint64_t rows) { file_->keep_rows(table, rows); }
 
 void OutcomeWriter::finish(bool complete, std::uint64_t literatures_done, std::uint64_t literatures_planned) {
     file_->finish(complete, literatures_done, literatures_planned);

@@ -32,6 +32,10 @@ public:
     /// Rows for one of the tables. Whole chunks are written at once, the rest waits. Throws RunError.
     void append(const std::string& table, const Batch& rows);
 
+    /// Forgets the rows of a table beyond the first `rows`, those of a literature that was not finished;
+    /// nothing more can be appended to it. Throws RunError.
+    void keep_rows(const std::string& table, std::uint64_t rows);
+
     /// Writes what waits and puts the file in its place. `complete`: all planned literatures are in it.
     /// Throws RunError.
     void finish(bool complete, std::uint64_t literatures_done, std::uint64_t literatures_planned);

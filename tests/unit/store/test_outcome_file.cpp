@@ -165,3 +165,18 @@ TEST_CASE("Output that cannot be written is refused before anything runs", "[sto
     CHECK_THROWS_WITH(check_output("", false), Catch::Contains("needs a name"));
     CHECK_THROWS_AS(check_output(folder / "there.h5", false), InputError);
 }
+
+TEST_CASE("Rows of what was not finished are forgotten, written or waiting", "[store]") {
+    const Folder folder;
+    for (const std::size_t kept : {std::size_t{0}, std::size_t{70000}, chunk_rows, std::size_t{150}, std::size_t{140000}}) {
+        const std::string path = folder / std::to_string(kept);
+        OutcomeWriter writer(path, false, facts(), {spec()}, true, serial);
+        writer.append("studies", rows(0, 140000));
+        writer.keep_rows("studies", kept);
+        writer.finish(false, 1, 3);
+        const OutcomeReader reader(path);
+        CHECK_FALSE(reader.complete());
+        REQUIRE(reader.rows("studies") == kept);
+        CHECK(same_values(reader.read("studies", "estimate"), rows(0, kept).columns[3]));
+    }
+}
