@@ -1,5 +1,6 @@
 #include "sim/config/limits.h"
 
+#include <algorithm>
 #include <fmt/format.h>
 
 #include <cmath>
@@ -81,6 +82,14 @@ std::vector<Fault> limit_faults(const Scenario& scenario, const ConfigNode& root
     limits.demand(count_cuts(scenario.regimes) <= most_cuts, "journal",
                   fmt::format("the steps of all journals hold more than {} different values of p", most_cuts),
                   "use fewer steps");
+    const std::vector<LabKind>& first = scenario.regimes.front().science.labs;
+    for (const Regime& regime : scenario.regimes) {
+        const auto same_name = [](const LabKind& a, const LabKind& b) { return a.name == b.name; };
+        const std::vector<LabKind>& labs = regime.science.labs;
+        limits.demand(std::equal(labs.begin(), labs.end(), first.begin(), first.end(), same_name), "regime",
+                      fmt::format("regime \"{}\" has other kinds of labs than the first", regime.name),
+                      "give all regimes the same kinds; a share of 0 takes one out");
+    }
     return limits.take();
 }
 
