@@ -109,9 +109,15 @@ void Studies(const StudyRound& round, bool student, bool two_sided, const TestTa
     const RoundKeys keys(round.key);
     const std::size_t lanes = 2 * hn::Lanes(F64());
     const std::size_t count = round.entities.count;
-    for (std::size_t at = 0; at < count; at += lanes) {
+    const auto draw = [&](std::size_t at) HWY_ATTR {
         const U2 block = entity_blocks(round, at, HWY_MIN(lanes, count - at));
-        const Block bits = philox(counter(round.address(Purpose::study_data), block), keys);
+        return philox(counter(round.address(Purpose::study_data), block), keys);
+    };
+    // The next block is drawn while this one's polynomials wait for each other.
+    Block next = count > 0 ? draw(0) : Block{};
+    for (std::size_t at = 0; at < count; at += lanes) {
+        const Block bits = next;
+        if (at + lanes < count) next = draw(at + lanes);
         const Pair data = normal_pair(bits);
         if (student) {
             student_studies(table, two_sided, data, spare_bits(bits), batch, at, count, scratch);

@@ -12,7 +12,7 @@ void add_row(const Design& design, const std::vector<Cut>& cuts, std::uint32_t n
     const TestPlan plan = describe(design, n);
     table.n1.push_back(plan.size.n1);
     table.n2.push_back(plan.size.n2);
-    table.participants.push_back(plan.participants);
+    table.participants.push_back(plan.size.n1 + plan.size.n2);
     table.df.push_back(plan.df);
     table.noncentrality.push_back(plan.noncentrality);
     table.to_estimate.push_back(reported_estimate(design, plan, 1.0));
@@ -50,7 +50,7 @@ TestTable test_table(const Science& science, const std::vector<Cut>& cuts) {
 }
 
 double TestTable::standard_error(const Design& design, std::size_t row, double statistic) const {
-    const TestPlan plan{{n1[row], n2[row]}, participants[row], df[row], noncentrality[row],
+    const TestPlan plan{{n1[row], n2[row]}, static_cast<double>(participants[row]), df[row], noncentrality[row],
                         to_corrected[row] * noncentrality[row], critical[row]};
     return reported_standard_error(design, plan, statistic);
 }

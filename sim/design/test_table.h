@@ -20,7 +20,7 @@ struct Cut {
 struct TestTable {
     // One entry per row.
     std::vector<std::uint32_t> n1, n2;      // n2 = 0 for designs with one group
-    std::vector<double> participants;
+    std::vector<std::uint32_t> participants;
     std::vector<double> df;                 // infinity where the variance is known
     std::vector<double> noncentrality;      // per unit of effect
     std::vector<double> to_estimate;        // reported estimate = statistic * to_estimate

@@ -10,7 +10,7 @@ namespace lacuna {
 namespace {
 
 /// Studies in a block that keep its columns in the second-level cache.
-constexpr double studies_wanted = 8192.0;
+constexpr double studies_wanted = 16384.0;
 constexpr std::uint64_t most_questions = 65536;
 
 double upper_studies(const Science& science) {

@@ -42,9 +42,8 @@ void gather_facts(const PreparedScience& science, const Conducted& block, CountS
     const Studies& studies = block.studies;
     const std::size_t count = studies.claim.size();
     scratch.participants.resize(count);
-    for (std::size_t s = 0; s < count; ++s) {
-        scratch.participants[s] = science.table.n1[studies.row[s]] + science.table.n2[studies.row[s]];
-    }
+    const std::uint32_t* by_row = science.table.participants.data();
+    for (std::size_t s = 0; s < count; ++s) scratch.participants[s] = by_row[studies.row[s]];
     StudyColumns columns{count, block.questions.truth.data(), studies.claim.data(), nullptr, studies.estimate.data(),
                          block.questions.effect.data(), scratch.participants.data()};
     if (!block.lines.one_each || studies.round.size() > 2) {

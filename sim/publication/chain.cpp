@@ -65,16 +65,17 @@ std::uint64_t entity_of(const Segment& segment, std::uint32_t manuscript) {
 void write_up(StreamKey key, Address address, const PreparedRules& rules, const Segment& segment,
               ChainScratch& scratch, Outcome& outcome) {
     const std::size_t count = segment.entities.count;
-    scratch.waiting.resize(count);
-    for (std::size_t i = 0; i < count; ++i) scratch.waiting[i] = static_cast<std::uint32_t>(i);
+    while (scratch.everyone.size() < count) scratch.everyone.push_back(static_cast<std::uint32_t>(scratch.everyone.size()));
+    scratch.waiting.assign(scratch.everyone.begin(), scratch.everyone.begin() + static_cast<std::ptrdiff_t>(count));
     const Chance* chance = rules.writing;
     if (chance[0].p() == 1.0 && chance[1].p() == 1.0 && chance[2].p() == 1.0) return;
     address.purpose = Purpose::writing;
     waiting_words(key, address, segment, scratch, scratch.words);
     const std::uint8_t* classes = outcome.manuscript_class.data() + segment.begin;
     scratch.happened.resize(count);
-    decide(key, address, count, scratch.words.data(), [&](std::size_t i) -> const Chance& { return chance[classes[i]]; },
-           [&](std::size_t i) { return entity_of(segment, static_cast<std::uint32_t>(i)); }, scratch.happened.data());
+    decide_by_code(key, address, count, scratch.words.data(), classes, chance, 3,
+                   [&](std::size_t i) { return entity_of(segment, static_cast<std::uint32_t>(i)); },
+                   scratch.happened.data());
     std::size_t written = 0;
     for (std::size_t i = 0; i < count; ++i) {
         scratch.waiting[written] = static_cast<std::uint32_t>(i);
@@ -103,9 +104,9 @@ void judge(StreamKey key, Address address, const PreparedRules::PreparedJournal&
     address.index = journal.index;
     address.purpose = Purpose::acceptance;
     waiting_words(key, address, segment, scratch, scratch.words);
-    if (journal.results_blind.p() == 0.0 && everyone) {
-        decide(key, address, count, scratch.words.data(),
-               [&](std::size_t i) -> const Chance& { return chances[facts[i]]; }, entity, scratch.happened.data());
+    if (journal.results_blind.p() == 0.0 && everyone && journal.accept.chance.size() <= 4) {
+        decide_by_code(key, address, count, scratch.words.data(), facts, chances, journal.accept.chance.size(), entity,
+                       scratch.happened.data());
         return;
     }
     if (journal.results_blind.p() == 0.0) {

@@ -36,6 +36,7 @@ PreparedRules prepare(const Rules& rules, Findings findings, const Cuts& cuts);
 struct ChainScratch {
     std::vector<std::uint16_t> words, blind_words;
     std::vector<std::uint32_t> waiting, offsets;
+    std::vector<std::uint32_t> everyone;  // 0, 1, 2, ...
     std::vector<std::uint8_t> level_two, level_one, happened, blind;
 };
 

@@ -44,4 +44,30 @@ void decide(StreamKey key, Address address, std::size_t count, const std::uint16
     }
 }
 
+/// The same where the chance follows from a code below `kinds` (at most 4): without look-ups the first
+/// pass is made of vector compares.
+template <class EntityOf>
+void decide_by_code(StreamKey key, Address address, std::size_t count, const std::uint16_t* words,
+                    const std::uint8_t* codes, const Chance* chances, std::size_t kinds, EntityOf entity,
+                    std::uint8_t* happened) {
+    std::uint16_t threshold[4] = {};
+    for (std::size_t k = 0; k < kinds; ++k) threshold[k] = chances[k].threshold();
+    const std::uint16_t t0 = threshold[0], t1 = threshold[1], t2 = threshold[2], t3 = threshold[3];
+    std::uint16_t open = 0;
+    for (std::size_t i = 0; i < count; ++i) {
+        const std::uint16_t code = codes[i];
+        std::uint16_t its = t0;
+        its = code == 1 ? t1 : its;
+        its = code == 2 ? t2 : its;
+        its = code == 3 ? t3 : its;
+        happened[i] = words[i] < its;
+        open |= static_cast<std::uint16_t>(words[i] == its);
+    }
+    if (open == 0) return;
+    for (std::size_t i = 0; i < count; ++i) {
+        const Chance& its = chances[codes[i]];
+        if (words[i] == its.threshold()) happened[i] = its.happens(words[i], key, address, entity(i));
+    }
+}
+
 }  // namespace lacuna
