@@ -43,26 +43,21 @@ TEST_CASE("What is written is read back, at every edge of a chunk", "[store]") {
     }
 }
 
-// ISA-L sometimes finds another encoding of the same values, as long or a byte longer (about one chunk in
-// ten thousand, by where the process lies in memory), so compressed files are compared by what they hold.
-TEST_CASE("Equal runs are equal content, and without compression equal bytes, whatever the batches", "[store]") {
+TEST_CASE("Equal runs are equal bytes, whatever the batches", "[store]") {
     const Folder folder;
     for (const bool compress : {true, false}) {
         write(folder / "a.h5", 150000, 150000, compress, true);
         write(folder / "b.h5", 150000, 999, compress, true);
         write(folder / "c.h5", 150000, 65536, compress, true);
-        const std::string content = payload_digest(OutcomeReader(folder / "a.h5"));
-        CHECK(content == payload_digest(OutcomeReader(folder / "b.h5")));
-        CHECK(content == payload_digest(OutcomeReader(folder / "c.h5")));
-        if (compress) continue;
         CHECK(bytes_of(folder / "a.h5") == bytes_of(folder / "b.h5"));
         CHECK(bytes_of(folder / "a.h5") == bytes_of(folder / "c.h5"));
     }
+    CHECK(payload_digest(OutcomeReader(folder / "a.h5")) == payload_digest(OutcomeReader(folder / "b.h5")));
     write(folder / "d.h5", 150001, 65536);
     CHECK(payload_digest(OutcomeReader(folder / "a.h5")) != payload_digest(OutcomeReader(folder / "d.h5")));
 }
 
-TEST_CASE("Equal runs are equal content, whatever the threads", "[store]") {
+TEST_CASE("Equal runs are equal bytes, whatever the threads", "[store]") {
     const Folder folder;
     const auto with_threads = [&](const std::string& path, std::size_t threads) {
         const ParallelFor loop = [threads](std::size_t count, const std::function<void(std::size_t)>& body) {
@@ -87,7 +82,7 @@ TEST_CASE("Equal runs are equal content, whatever the threads", "[store]") {
     for (const std::size_t threads : {1, 2, 7}) {
         const std::string path = folder / std::to_string(threads);
         with_threads(path, threads);
-        CHECK(payload_digest(OutcomeReader(path)) == payload_digest(OutcomeReader(folder / "plain.h5")));
+        CHECK(bytes_of(path) == bytes_of(folder / "plain.h5"));
     }
 }
 
