@@ -1,8 +1,8 @@
 #include "sim/config/limits.h"
 
-#include <algorithm>
 #include <fmt/format.h>
 
+#include <algorithm>
 #include <cmath>
 #include <set>
 

@@ -42,7 +42,8 @@ double finding_chance(const Science& science, const IntegerDistribution& sizes, 
         }
     }
     Distribution deviation = Distribution::fixed(0.0);
-    if (science.field.heterogeneity > 0.0) deviation = {Family::normal, 0.0, science.field.heterogeneity, -infinity, infinity, false, {}, {}};
+    if (science.field.heterogeneity > 0.0)
+        deviation = {Family::normal, 0.0, science.field.heterogeneity, -infinity, infinity, false, {}, {}};
     double sum = 0.0;
     for (const Node& node : quadrature(deviation, 8)) {
         for (const std::uint32_t n : some) {

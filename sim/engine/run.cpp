@@ -14,8 +14,8 @@ using Rows = std::vector<std::vector<double>>;  // per regime
 /// Either whole literatures, or a stretch of one.
 struct TaskResult {
     std::uint32_t first_literature = 0;
-    std::vector<Rows> rows;        // of whole literatures
-    std::vector<Tally> part;       // of a stretch, per regime
+    std::vector<Rows> rows;   // of whole literatures
+    std::vector<Tally> part;  // of a stretch, per regime
     bool opens = false, closes = false;
     std::uint64_t studies = 0;
     Details details;
@@ -78,13 +78,15 @@ public:
         literatures_a_task_ = static_cast<std::uint64_t>(std::clamp(wanted, 1.0, 256.0));
         stretches_ = (blocks_.count + blocks_a_task - 1) / blocks_a_task;
         progress_.literatures_total = scenario.run.literatures;
-        progress_.studies_total = static_cast<double>(scenario.run.literatures - options.first_literature) * all_studies();
+        progress_.studies_total =
+            static_cast<double>(scenario.run.literatures - options.first_literature) * all_studies();
     }
 
     RunOutcome run() {
         Schedule schedule;
         const std::uint64_t literatures = scenario_.run.literatures - options_.first_literature;
-        schedule.tasks = whole() ? (literatures + literatures_a_task_ - 1) / literatures_a_task_ : literatures * stretches_;
+        schedule.tasks =
+            whole() ? (literatures + literatures_a_task_ - 1) / literatures_a_task_ : literatures * stretches_;
         schedule.threads = options_.threads;
         schedule.stop = options_.stop;
         schedule.work = [this](std::uint64_t task) { return whole() ? whole_task(task) : stretch_task(task); };
@@ -123,8 +125,9 @@ private:
         for (std::uint64_t l = first; l < last; ++l) {
             const auto literature = static_cast<std::uint32_t>(l);
             for (Tally& tally : tallies) tally.clear();
-            result->studies += simulate_block(prepared_, key_, literature, draw_rosters(prepared_, key_, literature),
-                                              blocks_.range(0), *scratch, tallies, result->details);
+            result->studies +=
+                simulate_block(prepared_, key_, literature, draw_rosters(prepared_, key_, literature),
+                               blocks_.range(0), *scratch, tallies, result->details);
             Rows rows;
             for (const Tally& tally : tallies) rows.push_back(tally.row());
             result->rows.push_back(std::move(rows));

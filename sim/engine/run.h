@@ -31,10 +31,10 @@ struct Progress {
 };
 
 struct RunOptions {
-    unsigned threads = 0;                            // 0: as many as the machine has
-    std::uint32_t first_literature = 0;              // literatures before it are taken as done
-    std::function<bool()> stop;                      // true: end after what is in flight
-    std::function<void(const Progress&)> progress;   // called from the thread of the sinks
+    unsigned threads = 0;                           // 0: as many as the machine has
+    std::uint32_t first_literature = 0;             // literatures before it are taken as done
+    std::function<bool()> stop;                     // true: end after what is in flight
+    std::function<void(const Progress&)> progress;  // called from the thread of the sinks
 };
 
 struct RunOutcome {

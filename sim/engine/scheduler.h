@@ -13,10 +13,10 @@ struct TaskResult;
 
 struct Schedule {
     std::uint64_t tasks = 0;
-    unsigned threads = 0;                                                  // 0: as many as the machine has
-    std::function<bool()> stop;                                            // asked before each task starts
-    std::function<std::shared_ptr<TaskResult>(std::uint64_t task)> work;   // from many threads
-    std::function<void(const std::shared_ptr<TaskResult>&)> deliver;       // one at a time, in order of tasks
+    unsigned threads = 0;                                                 // 0: as many as the machine has
+    std::function<bool()> stop;                                           // asked before each task starts
+    std::function<std::shared_ptr<TaskResult>(std::uint64_t task)> work;  // from many threads
+    std::function<void(const std::shared_ptr<TaskResult>&)> deliver;      // one at a time, in order of tasks
 };
 
 /// Runs the tasks; at most a few per thread are under way, so memory does not grow with their number.

@@ -37,7 +37,8 @@ std::uint64_t run_in_order(const Schedule& schedule) {
         tbb::parallel_pipeline(
             3 * threads,
             tbb::make_filter<void, std::uint64_t>(tbb::filter_mode::serial_in_order, start) &
-                tbb::make_filter<std::uint64_t, std::shared_ptr<TaskResult>>(tbb::filter_mode::parallel, schedule.work) &
+                tbb::make_filter<std::uint64_t, std::shared_ptr<TaskResult>>(tbb::filter_mode::parallel,
+                                                                             schedule.work) &
                 tbb::make_filter<std::shared_ptr<TaskResult>, void>(tbb::filter_mode::serial_in_order, deliver));
     });
     return delivered;

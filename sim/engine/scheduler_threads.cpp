@@ -39,8 +39,10 @@ void deliver_waiting(const Schedule& schedule, Board& board, std::unique_lock<st
         }
         lock.lock();
         board.delivering = false;
-        if (error) board.error = error;
-        else ++board.delivered;
+        if (error)
+            board.error = error;
+        else
+            ++board.delivered;
         board.changed.notify_all();
     }
 }
@@ -48,7 +50,8 @@ void deliver_waiting(const Schedule& schedule, Board& board, std::unique_lock<st
 void run_worker(const Schedule& schedule, Board& board, std::uint64_t ahead) {
     std::unique_lock lock(board.mutex);
     for (;;) {
-        board.changed.wait(lock, [&] { return board.ended || board.error || board.next < board.delivered + ahead; });
+        board.changed.wait(lock,
+                           [&] { return board.ended || board.error || board.next < board.delivered + ahead; });
         if (board.ended || board.error) return;
         if (board.next == schedule.tasks || (schedule.stop && schedule.stop())) {
             board.ended = true;
@@ -65,8 +68,10 @@ void run_worker(const Schedule& schedule, Board& board, std::uint64_t ahead) {
             error = std::current_exception();
         }
         lock.lock();
-        if (error) board.error = error;
-        else board.waiting.emplace(task, result);
+        if (error)
+            board.error = error;
+        else
+            board.waiting.emplace(task, result);
         deliver_waiting(schedule, board, lock);
         board.changed.notify_all();
     }

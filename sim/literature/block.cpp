@@ -40,7 +40,8 @@ Blocks cut_into_blocks(const Scenario& scenario) {
 
 std::vector<Roster> draw_rosters(const PreparedScenario& prepared, StreamKey key, std::uint32_t literature) {
     std::vector<Roster> rosters;
-    for (const PreparedScience& science : prepared.sciences) rosters.push_back(draw_roster(science, key, literature));
+    for (const PreparedScience& science : prepared.sciences)
+        rosters.push_back(draw_roster(science, key, literature));
     return rosters;
 }
 

@@ -13,10 +13,10 @@ namespace lacuna {
 
 /// How a scenario's literatures are cut into blocks, by the scenario alone.
 struct Blocks {
-    std::uint64_t questions;           // in a literature
-    std::uint64_t questions_a_block;   // a multiple of 32: the groups of the random kernels
-    std::uint64_t count;               // blocks in a literature
-    double studies_a_literature;       // an upper estimate
+    std::uint64_t questions;          // in a literature
+    std::uint64_t questions_a_block;  // a multiple of 32: the groups of the random kernels
+    std::uint64_t count;              // blocks in a literature
+    double studies_a_literature;      // an upper estimate
 
     QuestionRange range(std::uint64_t block) const;
 };

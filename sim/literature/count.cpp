@@ -11,7 +11,8 @@ bool is_real(const Conducted& block, std::uint32_t line) {
 void count_manuscripts(const PreparedRules& rules, const Conducted& block, const Outcome& outcome, Tally& tally) {
     const std::size_t count = outcome.manuscript_class.size();
     for (std::size_t m = 0; m < count; ++m) {
-        const std::uint32_t line = rules.unit == Unit::study ? block.studies.line[m] : static_cast<std::uint32_t>(m);
+        const std::uint32_t line =
+            rules.unit == Unit::study ? block.studies.line[m] : static_cast<std::uint32_t>(m);
         tally.add_manuscript(is_real(block, line), ManuscriptClass(outcome.manuscript_class[m]),
                              Status(outcome.manuscript_status[m]));
     }
@@ -44,8 +45,13 @@ void gather_facts(const PreparedScience& science, const Conducted& block, CountS
     scratch.participants.resize(count);
     const std::uint32_t* by_row = science.table.participants.data();
     for (std::size_t s = 0; s < count; ++s) scratch.participants[s] = by_row[studies.row[s]];
-    StudyColumns columns{count, block.questions.truth.data(), studies.claim.data(), nullptr, studies.estimate.data(),
-                         block.questions.effect.data(), scratch.participants.data()};
+    StudyColumns columns{count,
+                         block.questions.truth.data(),
+                         studies.claim.data(),
+                         nullptr,
+                         studies.estimate.data(),
+                         block.questions.effect.data(),
+                         scratch.participants.data()};
     if (!block.lines.one_each || studies.round.size() > 2) {
         scratch.truth.resize(count);
         scratch.effect.resize(count);

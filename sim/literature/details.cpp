@@ -65,8 +65,8 @@ void add_manuscripts(const PreparedScenario& prepared, std::size_t regime, const
     const bool by_study = rules.unit == Unit::study;
     std::vector<std::int32_t> number(by_study ? studies.claim.size() : 0);  // of a study in its line
     for (std::size_t r = 0; by_study && r + 1 < studies.round.size(); ++r) {
-        std::fill(number.begin() + std::ptrdiff_t(studies.round[r]), number.begin() + std::ptrdiff_t(studies.round[r + 1]),
-                  static_cast<std::int32_t>(r));
+        std::fill(number.begin() + std::ptrdiff_t(studies.round[r]),
+                  number.begin() + std::ptrdiff_t(studies.round[r + 1]), static_cast<std::int32_t>(r));
     }
     const auto line = [&](std::size_t m) { return by_study ? studies.line[m] : static_cast<std::uint32_t>(m); };
     const auto findings = [&](std::size_t m) -> unsigned {
@@ -145,8 +145,9 @@ void add_studies(const PreparedScenario& prepared, std::size_t science, const Co
 
 }  // namespace
 
-void add_details(const PreparedScenario& prepared, std::size_t science, const Roster& roster, const Conducted& block,
-                 const std::vector<Outcome>& outcomes, std::map<std::string, Batch>& details) {
+void add_details(const PreparedScenario& prepared, std::size_t science, const Roster& roster,
+                 const Conducted& block, const std::vector<Outcome>& outcomes,
+                 std::map<std::string, Batch>& details) {
     add_questions(science, block, details.at("questions"));
     if (block.questions.first == 0) add_labs(prepared, science, roster, block, details.at("labs"));
     for (std::size_t r = 0; r < outcomes.size(); ++r) {

@@ -14,7 +14,8 @@ namespace lacuna {
 
 /// Appends the block of science `science` to the tables in `details` ("questions", "labs" with the
 /// literature's first block, "manuscripts" of each of its regimes, "studies" in the order of lines).
-void add_details(const PreparedScenario& prepared, std::size_t science, const Roster& roster, const Conducted& block,
-                 const std::vector<Outcome>& outcomes, std::map<std::string, Batch>& details);
+void add_details(const PreparedScenario& prepared, std::size_t science, const Roster& roster,
+                 const Conducted& block, const std::vector<Outcome>& outcomes,
+                 std::map<std::string, Batch>& details);
 
 }  // namespace lacuna

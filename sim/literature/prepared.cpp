@@ -17,7 +17,8 @@ std::vector<Cut> as_cuts(const Cuts& cuts) {
 /// The power of 2 next to the larger of: a large effect of the field, the largest standard error.
 EffectScale scale_of(const Science& science, const TestTable& table) {
     double largest = std::fabs(quantile(science.field.null_effect, 0.999));
-    for (const double p : {0.001, 0.5, 0.999}) largest = std::fmax(largest, std::fabs(quantile(science.field.effect, p)));
+    for (const double p : {0.001, 0.5, 0.999})
+        largest = std::fmax(largest, std::fabs(quantile(science.field.effect, p)));
     for (const double noncentrality : table.noncentrality) largest = std::fmax(largest, 1.0 / noncentrality);
     return {std::exp2(std::ceil(std::log2(largest)))};
 }
@@ -65,7 +66,8 @@ PreparedScenario::PreparedScenario(const Scenario& scenario)
     for (std::size_t r = 0; r < scenario.regimes.size(); ++r) {
         std::vector<const Rules*> its_rules;
         for (std::size_t other = 0; other < scenario.regimes.size(); ++other) {
-            if (groups.science_of[other] == groups.science_of[r]) its_rules.push_back(&scenario.regimes[other].rules);
+            if (groups.science_of[other] == groups.science_of[r])
+                its_rules.push_back(&scenario.regimes[other].rules);
         }
         rules.push_back(prepare(scenario.regimes[r].rules, scenario.regimes[r].science.design.findings,
                                 collect_cuts(its_rules)));

@@ -16,10 +16,10 @@ struct PreparedScience {
     Science science;
     TestTable table;
     Sampler effect, null_effect;
-    std::vector<Sampler> lab_lines;           // per kind
+    std::vector<Sampler> lab_lines;               // per kind
     std::vector<std::size_t> cuts_two, cuts_one;  // in table.cut_critical, by sidedness
-    EffectScale scale;                        // of effects and estimates
-    std::uint32_t longest_line = 0;  // studies, over the kinds
+    EffectScale scale;                            // of effects and estimates
+    std::uint32_t longest_line = 0;               // studies, over the kinds
     bool who_matters;  // whether it must be known which lab runs a line: several kinds, or stored lines
 
     PreparedScience(const Science& its, const Cuts& cuts, bool lines_are_stored);
@@ -32,7 +32,7 @@ struct PreparedScenario {
     std::vector<PreparedRules> rules;  // per regime
 
     // Codes of the enumerations in the detail tables.
-    std::vector<std::string> kind_names;                 // of all sciences
+    std::vector<std::string> kind_names;                   // of all sciences
     std::vector<std::vector<std::uint8_t>> journal_codes;  // [regime][journal tried, from 1; 0: none]
 
     std::size_t kind_code(const std::string& name) const;

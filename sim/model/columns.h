@@ -9,30 +9,30 @@ namespace lacuna {
 
 /// What is true of the block's questions; one entry per question.
 struct Questions {
-    std::uint64_t first = 0;           // question number of entry 0
-    std::vector<std::uint8_t> real;    // 1: drawn as real
-    std::vector<std::uint8_t> truth;   // a Truth: real, and not negligible
+    std::uint64_t first = 0;          // question number of entry 0
+    std::vector<std::uint8_t> real;   // 1: drawn as real
+    std::vector<std::uint8_t> truth;  // a Truth: real, and not negligible
     std::vector<double> effect;
 };
 
 /// The block's lines; one entry per line, lines of a question one after the other.
 struct Lines {
-    std::uint64_t first = 0;               // line number of entry 0
-    std::vector<std::uint32_t> question;   // entry in Questions
-    bool one_each = false;                 // line i works on question i, for all of them
-    std::vector<std::uint32_t> lab;        // lab number; empty when nobody asks
-    std::vector<std::uint8_t> kind;        // lab kind; empty when there is one
-    std::vector<std::uint16_t> studies;    // how many the line holds
-    std::vector<std::uint16_t> positive;   // of them positive
-    std::vector<std::uint16_t> reversed;   // of them reversed
+    std::uint64_t first = 0;              // line number of entry 0
+    std::vector<std::uint32_t> question;  // entry in Questions
+    bool one_each = false;                // line i works on question i, for all of them
+    std::vector<std::uint32_t> lab;       // lab number; empty when nobody asks
+    std::vector<std::uint8_t> kind;       // lab kind; empty when there is one
+    std::vector<std::uint16_t> studies;   // how many the line holds
+    std::vector<std::uint16_t> positive;  // of them positive
+    std::vector<std::uint16_t> reversed;  // of them reversed
 };
 
 /// The block's studies, in rounds: first every line's study 0, then every study 1, and so on.
 struct Studies {
-    std::vector<std::size_t> round;       // round r: entries round[r] .. round[r + 1] - 1
-    std::vector<std::uint32_t> line;      // entry in Lines, ascending within a round
-    std::vector<std::uint32_t> row;       // row of the test table (the study's size)
-    std::vector<double> theta;            // true effect of the study
+    std::vector<std::size_t> round;   // round r: entries round[r] .. round[r + 1] - 1
+    std::vector<std::uint32_t> line;  // entry in Lines, ascending within a round
+    std::vector<std::uint32_t> row;   // row of the test table (the study's size)
+    std::vector<double> theta;        // true effect of the study
     std::vector<double> statistic;
     std::vector<double> estimate;
     std::vector<std::uint8_t> claim;      // a Claim
@@ -50,7 +50,7 @@ struct Conducted {
 
 /// What became of the block under one regime.
 struct Outcome {
-    std::vector<std::uint8_t> status;   // a Status per study
+    std::vector<std::uint8_t> status;  // a Status per study
     // One entry per manuscript: per study where studies are manuscripts, else per line.
     std::vector<std::uint8_t> manuscript_class;
     std::vector<std::uint8_t> manuscript_status;

@@ -37,19 +37,23 @@ TableSpec labs_table(const std::vector<std::string>& kinds) {
 
 TableSpec manuscripts_table(const std::vector<std::string>& regimes, const std::vector<std::string>& journals) {
     TableSpec table{"manuscripts", {}};
-    table.columns = {
-        {"regime", ColumnType::u8, "1", "regime", regimes},
-        {"literature", ColumnType::i32, "code", "literature number, from 0", {}},
-        {"question", ColumnType::i32, "code", "question number within the literature", {}},
-        {"lab", ColumnType::i32, "code", "lab number within the literature", {}},
-        {"line", ColumnType::i32, "code", "line number within the literature", {}},
-        {"study", ColumnType::i32, "code", "number of the study in its line; -1 when the manuscript is a whole line", {}},
-        {"studies", ColumnType::i32, "studies", "studies of the line or study", {}},
-        {"findings", ColumnType::i32, "studies", "of them with a finding", {}},
-        {"class", ColumnType::u8, "1", "all find in one direction; some do, or they disagree; none does", labels(class_names)},
-        {"status", ColumnType::u8, "1", "how far the manuscript got", labels(status_names)},
-        {"journal", ColumnType::u8, "1", "journal that published it", journals},
-        {"attempts", ColumnType::u8, "journals", "journals that judged it", {}}};
+    table.columns = {{"regime", ColumnType::u8, "1", "regime", regimes},
+                     {"literature", ColumnType::i32, "code", "literature number, from 0", {}},
+                     {"question", ColumnType::i32, "code", "question number within the literature", {}},
+                     {"lab", ColumnType::i32, "code", "lab number within the literature", {}},
+                     {"line", ColumnType::i32, "code", "line number within the literature", {}},
+                     {"study",
+                      ColumnType::i32,
+                      "code",
+                      "number of the study in its line; -1 when the manuscript is a whole line",
+                      {}},
+                     {"studies", ColumnType::i32, "studies", "studies of the line or study", {}},
+                     {"findings", ColumnType::i32, "studies", "of them with a finding", {}},
+                     {"class", ColumnType::u8, "1",
+                      "all find in one direction; some do, or they disagree; none does", labels(class_names)},
+                     {"status", ColumnType::u8, "1", "how far the manuscript got", labels(status_names)},
+                     {"journal", ColumnType::u8, "1", "journal that published it", journals},
+                     {"attempts", ColumnType::u8, "journals", "journals that judged it", {}}};
     return table;
 }
 
@@ -65,8 +69,11 @@ TableSpec studies_table(const std::vector<std::string>& regimes) {
         {"question_effect", ColumnType::f64, "effect", "true effect of the question", {}},
         {"true_effect", ColumnType::f64, "effect", "true effect of the study", {}},
         {"estimate", ColumnType::f64, "effect", "effect as reported", {}},
-        {"hedges_g", ColumnType::f64, "effect",
-         "estimate with the exact small-sample correction; equal to the estimate where none applies", {}},
+        {"hedges_g",
+         ColumnType::f64,
+         "effect",
+         "estimate with the exact small-sample correction; equal to the estimate where none applies",
+         {}},
         {"standard_error", ColumnType::f64, "effect", "standard error of the estimate, as reported", {}},
         {"statistic", ColumnType::f64, "1", "t or z", {}},
         {"df", ColumnType::f64, "1", "degrees of freedom; infinite for z", {}},

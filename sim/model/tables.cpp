@@ -8,9 +8,12 @@ namespace {
 
 ColumnData empty_column(ColumnType type) {
     switch (type) {
-        case ColumnType::u8: return std::vector<std::uint8_t>{};
-        case ColumnType::i32: return std::vector<std::int32_t>{};
-        case ColumnType::f64: return std::vector<double>{};
+        case ColumnType::u8:
+            return std::vector<std::uint8_t>{};
+        case ColumnType::i32:
+            return std::vector<std::int32_t>{};
+        case ColumnType::f64:
+            return std::vector<double>{};
     }
     throw Defect("empty_column: unknown column type");
 }

@@ -15,7 +15,7 @@ enum class ColumnType : std::uint8_t { u8, i32, f64 };
 struct ColumnSpec {
     std::string name;
     ColumnType type;
-    std::string units;        // "1" for pure numbers, "studies", "participants", "code"
+    std::string units;  // "1" for pure numbers, "studies", "participants", "code"
     std::string description;
     std::vector<std::string> labels;  // enumeration: label of 0, 1, ...
 };

@@ -6,9 +6,12 @@ namespace lacuna {
 
 double writing_chance(const Writing& writing, ManuscriptClass manuscript_class) {
     switch (manuscript_class) {
-        case ManuscriptClass::supportive: return writing.supportive;
-        case ManuscriptClass::mixed: return writing.mixed;
-        case ManuscriptClass::null: return writing.null;
+        case ManuscriptClass::supportive:
+            return writing.supportive;
+        case ManuscriptClass::mixed:
+            return writing.mixed;
+        case ManuscriptClass::null:
+            return writing.null;
     }
     return 0.0;
 }

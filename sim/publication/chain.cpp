@@ -29,7 +29,8 @@ std::vector<Segment> segments(Unit unit, const Conducted& block) {
     for (std::size_t r = 0; r + 1 < round.size(); ++r) {
         const std::size_t count = round[r + 1] - round[r];
         const bool every_line = count == lines.studies.size();
-        all.push_back({round[r], static_cast<std::uint16_t>(r),
+        all.push_back({round[r],
+                       static_cast<std::uint16_t>(r),
                        {lines.first, every_line ? nullptr : block.studies.line.data() + round[r], count}});
     }
     return all;
@@ -65,7 +66,8 @@ std::uint64_t entity_of(const Segment& segment, std::uint32_t manuscript) {
 void write_up(StreamKey key, Address address, const PreparedRules& rules, const Segment& segment,
               ChainScratch& scratch, Outcome& outcome) {
     const std::size_t count = segment.entities.count;
-    while (scratch.everyone.size() < count) scratch.everyone.push_back(static_cast<std::uint32_t>(scratch.everyone.size()));
+    while (scratch.everyone.size() < count)
+        scratch.everyone.push_back(static_cast<std::uint32_t>(scratch.everyone.size()));
     scratch.waiting.assign(scratch.everyone.begin(), scratch.everyone.begin() + static_cast<std::ptrdiff_t>(count));
     const Chance* chance = rules.writing;
     if (chance[0].p() == 1.0 && chance[1].p() == 1.0 && chance[2].p() == 1.0) return;
@@ -73,9 +75,9 @@ void write_up(StreamKey key, Address address, const PreparedRules& rules, const 
     waiting_words(key, address, segment, scratch, scratch.words);
     const std::uint8_t* classes = outcome.manuscript_class.data() + segment.begin;
     scratch.happened.resize(count);
-    decide_by_code(key, address, count, scratch.words.data(), classes, chance, 3,
-                   [&](std::size_t i) { return entity_of(segment, static_cast<std::uint32_t>(i)); },
-                   scratch.happened.data());
+    decide_by_code(
+        key, address, count, scratch.words.data(), classes, chance, 3,
+        [&](std::size_t i) { return entity_of(segment, static_cast<std::uint32_t>(i)); }, scratch.happened.data());
     std::size_t written = 0;
     for (std::size_t i = 0; i < count; ++i) {
         scratch.waiting[written] = static_cast<std::uint32_t>(i);
@@ -105,27 +107,30 @@ void judge(StreamKey key, Address address, const PreparedRules::PreparedJournal&
     address.purpose = Purpose::acceptance;
     waiting_words(key, address, segment, scratch, scratch.words);
     if (journal.results_blind.p() == 0.0 && everyone && journal.accept.chance.size() <= 4) {
-        decide_by_code(key, address, count, scratch.words.data(), facts, chances, journal.accept.chance.size(), entity,
-                       scratch.happened.data());
+        decide_by_code(key, address, count, scratch.words.data(), facts, chances, journal.accept.chance.size(),
+                       entity, scratch.happened.data());
         return;
     }
     if (journal.results_blind.p() == 0.0) {
-        decide(key, address, count, scratch.words.data(),
-               [&](std::size_t i) -> const Chance& { return chances[facts[waiting[i]]]; }, entity,
-               scratch.happened.data());
+        decide(
+            key, address, count, scratch.words.data(),
+            [&](std::size_t i) -> const Chance& { return chances[facts[waiting[i]]]; }, entity,
+            scratch.happened.data());
         return;
     }
     Address blind_address = address;
     blind_address.purpose = Purpose::results_blind;
     waiting_words(key, blind_address, segment, scratch, scratch.blind_words);
     scratch.blind.resize(count);
-    decide(key, blind_address, count, scratch.blind_words.data(),
-           [&](std::size_t) -> const Chance& { return journal.results_blind; }, entity, scratch.blind.data());
-    decide(key, address, count, scratch.words.data(),
-           [&](std::size_t i) -> const Chance& {
-               return scratch.blind[i] ? journal.results_blind_chance : chances[facts[waiting[i]]];
-           },
-           entity, scratch.happened.data());
+    decide(
+        key, blind_address, count, scratch.blind_words.data(),
+        [&](std::size_t) -> const Chance& { return journal.results_blind; }, entity, scratch.blind.data());
+    decide(
+        key, address, count, scratch.words.data(),
+        [&](std::size_t i) -> const Chance& {
+            return scratch.blind[i] ? journal.results_blind_chance : chances[facts[waiting[i]]];
+        },
+        entity, scratch.happened.data());
 }
 
 /// The waiting manuscripts of a segment at journal j; those it rejects go on waiting.
@@ -180,11 +185,12 @@ Cuts collect_cuts(const std::vector<const Rules*>& rules) {
 }
 
 PreparedRules prepare(const Rules& rules, Findings findings, const Cuts& cuts) {
-    PreparedRules prepared{rules.writing.unit,
-                           findings,
-                           {Chance(rules.writing.supportive), Chance(rules.writing.mixed), Chance(rules.writing.null)},
-                           {},
-                           rules.journals.empty()};
+    PreparedRules prepared{
+        rules.writing.unit,
+        findings,
+        {Chance(rules.writing.supportive), Chance(rules.writing.mixed), Chance(rules.writing.null)},
+        {},
+        rules.journals.empty()};
     const std::size_t tried = std::min<std::size_t>(rules.submission.attempts, rules.journals.size());
     for (std::size_t j = 0; j < tried; ++j) {
         const Journal& journal = rules.journals[j];

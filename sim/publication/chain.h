@@ -26,7 +26,7 @@ struct PreparedRules {
     };
     Unit unit;
     Findings findings;
-    Chance writing[3];  // by class
+    Chance writing[3];                      // by class
     std::vector<PreparedJournal> journals;  // as many as are tried at most
     bool no_journal;
 };

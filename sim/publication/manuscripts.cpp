@@ -47,7 +47,8 @@ void classify(const PreparedRules& rules, const Conducted& block, Outcome& outco
         std::uint8_t* out = classes.data();
         constexpr auto supportive = static_cast<std::uint8_t>(ManuscriptClass::supportive);
         constexpr auto null = static_cast<std::uint8_t>(ManuscriptClass::null);
-        const auto other = static_cast<std::uint8_t>(rules.findings == Findings::either ? Claim::reversed : Claim::positive);
+        const auto other =
+            static_cast<std::uint8_t>(rules.findings == Findings::either ? Claim::reversed : Claim::positive);
         for (std::size_t s = 0; s < count; ++s) {
             const bool finds = claim[s] == static_cast<std::uint8_t>(Claim::positive) || claim[s] == other;
             out[s] = finds ? supportive : null;

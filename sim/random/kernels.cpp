@@ -12,7 +12,7 @@
 HWY_BEFORE_NAMESPACE();
 namespace lacuna::HWY_NAMESPACE {
 
-constexpr std::size_t group = 32;            // entities that share 16 blocks
+constexpr std::size_t group = 32;  // entities that share 16 blocks
 constexpr std::size_t group_blocks = 16;
 constexpr std::size_t most_lanes = 2 * HWY_MAX_BYTES / 8;  // of two vectors
 
@@ -41,8 +41,8 @@ HWY_INLINE void fill_group(const RoundKeys& key, Address address, std::uint64_t 
 }
 
 template <class Draw>
-HWY_INLINE void fill_range(const RoundKeys& key, Address address, std::uint64_t first, std::size_t count, double* out,
-                           Draw draw) {
+HWY_INLINE void fill_range(const RoundKeys& key, Address address, std::uint64_t first, std::size_t count,
+                           double* out, Draw draw) {
     alignas(64) double edge[group];
     std::size_t done = 0;
     while (done < count) {
@@ -129,7 +129,8 @@ HWY_INLINE void word_group(const RoundKeys& key, Address address, std::uint64_t 
 }
 
 template <class Word>
-HWY_INLINE void word_range(const RoundKeys& key, Address address, std::uint64_t first, std::size_t count, Word* out) {
+HWY_INLINE void word_range(const RoundKeys& key, Address address, std::uint64_t first, std::size_t count,
+                           Word* out) {
     constexpr std::size_t size = word_group_size<Word>;
     Word edge[size];
     std::size_t done = 0;

@@ -98,7 +98,8 @@ struct RoundKeys {
     explicit RoundKeys(StreamKey key) {
         for (std::uint32_t round = 0; round < 10; ++round) {
             k0[round] = static_cast<std::uint32_t>(static_cast<std::uint32_t>(key.seed) + round * 0x9E3779B9u);
-            k1[round] = static_cast<std::uint32_t>(static_cast<std::uint32_t>(key.seed >> 32) + round * 0xBB67AE85u);
+            k1[round] =
+                static_cast<std::uint32_t>(static_cast<std::uint32_t>(key.seed >> 32) + round * 0xBB67AE85u);
         }
     }
 };
@@ -130,8 +131,8 @@ HWY_INLINE Block philox(Block c, const RoundKeys& keys) {
 
 /// The counter block of `address` for the entity blocks in `block` (each below 2^40).
 HWY_INLINE Block counter(Address address, U2 block) {
-    const std::uint64_t tags = std::uint64_t{static_cast<std::uint8_t>(address.purpose)} << 8 |
-                               std::uint64_t{address.study} << 16;
+    const std::uint64_t tags =
+        std::uint64_t{static_cast<std::uint8_t>(address.purpose)} << 8 | std::uint64_t{address.study} << 16;
     return {all(std::uint64_t{address.index}), block, right<32>(block) | all(tags),
             all(std::uint64_t{address.literature})};
 }

@@ -67,7 +67,7 @@ std::vector<Node> quadrature(const Distribution& distribution, int count = 200,
 /// (halves up). Support is cut where the tail beyond holds less than 2^-60. Throws InputError when
 /// it would hold more than `most` integers.
 struct IntegerDistribution {
-    long first = 0;                 // the integer of chance[0]
+    long first = 0;  // the integer of chance[0]
     std::vector<double> chance;
 };
 IntegerDistribution rounded(const Distribution& distribution, bool down, std::size_t most = 1u << 22);

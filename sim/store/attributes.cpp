@@ -41,8 +41,8 @@ void write_text(hid_t object, const char* name, const std::string& text) {
 
 void write_integer(hid_t object, const char* name, std::int32_t value) {
     const Handle space = checked(H5Screate(H5S_SCALAR), H5Sclose, label(name));
-    const Handle attribute =
-        checked(H5Acreate2(object, name, H5T_STD_I32LE, space.id(), H5P_DEFAULT, H5P_DEFAULT), H5Aclose, label(name));
+    const Handle attribute = checked(H5Acreate2(object, name, H5T_STD_I32LE, space.id(), H5P_DEFAULT, H5P_DEFAULT),
+                                     H5Aclose, label(name));
     check(H5Awrite(attribute.id(), H5T_NATIVE_INT32, &value), label(name));
 }
 
@@ -50,7 +50,8 @@ std::string read_text(hid_t object, const char* name) {
     if (!has(object, name)) return {};
     const Handle attribute = checked(H5Aopen(object, name, H5P_DEFAULT), H5Aclose, label(name));
     const Handle type = checked(H5Aget_type(attribute.id()), H5Tclose, label(name));
-    if (H5Tget_class(type.id()) != H5T_STRING || !is_scalar(attribute.id())) throw RunError(label(name) + " is not a text");
+    if (H5Tget_class(type.id()) != H5T_STRING || !is_scalar(attribute.id()))
+        throw RunError(label(name) + " is not a text");
     if (H5Tis_variable_str(type.id()) > 0) {
         const Handle memory = text_type();
         check(H5Tset_cset(memory.id(), H5Tget_cset(type.id())), label(name));

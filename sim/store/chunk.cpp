@@ -11,8 +11,8 @@ namespace lacuna {
 
 namespace {
 
-constexpr std::size_t sample_bytes = 16384; // tried first, to tell what cannot be compressed
-constexpr double worth_it = 0.92;          // keep the compressed form below this share of the raw one
+constexpr std::size_t sample_bytes = 16384;  // tried first, to tell what cannot be compressed
+constexpr double worth_it = 0.92;            // keep the compressed form below this share of the raw one
 
 /// The bytes of a chunk's values, the first of each, then the second of each, and so on.
 std::vector<unsigned char> shuffled(const std::vector<unsigned char>& raw, std::size_t size) {
@@ -47,7 +47,8 @@ std::vector<unsigned char> deflated(const std::vector<unsigned char>& from, std:
     return out;
 }
 
-std::vector<unsigned char> raw_bytes(const ColumnData& column, std::size_t first, std::size_t count, std::size_t rows) {
+std::vector<unsigned char> raw_bytes(const ColumnData& column, std::size_t first, std::size_t count,
+                                     std::size_t rows) {
     return std::visit(
         [&](const auto& values) {
             const std::size_t size = sizeof(values[0]);
@@ -62,9 +63,12 @@ std::vector<unsigned char> raw_bytes(const ColumnData& column, std::size_t first
 
 std::size_t value_size(ColumnType type) {
     switch (type) {
-        case ColumnType::u8: return 1;
-        case ColumnType::i32: return 4;
-        case ColumnType::f64: return 8;
+        case ColumnType::u8:
+            return 1;
+        case ColumnType::i32:
+            return 4;
+        case ColumnType::f64:
+            return 8;
     }
     throw Defect("value_size: unknown column type");
 }
@@ -81,7 +85,9 @@ EncodedChunk encode_chunk(const ColumnData& column, std::size_t first, std::size
     const std::size_t size = raw.size() / rows;
     const std::size_t sampled = std::min(raw.size(), sample_bytes) / size * size;
     const std::vector<unsigned char> head(raw.begin(), raw.begin() + static_cast<std::ptrdiff_t>(sampled));
-    const auto limit = [](std::size_t bytes) { return std::max<std::size_t>(64, static_cast<std::size_t>(worth_it * static_cast<double>(bytes))); };
+    const auto limit = [](std::size_t bytes) {
+        return std::max<std::size_t>(64, static_cast<std::size_t>(worth_it * static_cast<double>(bytes)));
+    };
     const std::vector<unsigned char> sample = shuffle ? shuffled(head, size) : head;
     if (deflated(sample, limit(sample.size())).empty()) return {std::move(raw), skip_all};
     const std::vector<unsigned char> sorted = shuffle ? shuffled(raw, size) : raw;

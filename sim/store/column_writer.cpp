@@ -20,9 +20,12 @@ Handle enumeration(const std::vector<std::string>& labels, const std::string& pa
 Handle file_type(const ColumnSpec& spec, const std::string& path) {
     switch (spec.type) {
         case ColumnType::u8:
-            return spec.labels.empty() ? checked(H5Tcopy(H5T_STD_U8LE), H5Tclose, path) : enumeration(spec.labels, path);
-        case ColumnType::i32: return checked(H5Tcopy(H5T_STD_I32LE), H5Tclose, path);
-        case ColumnType::f64: return checked(H5Tcopy(H5T_IEEE_F64LE), H5Tclose, path);
+            return spec.labels.empty() ? checked(H5Tcopy(H5T_STD_U8LE), H5Tclose, path)
+                                       : enumeration(spec.labels, path);
+        case ColumnType::i32:
+            return checked(H5Tcopy(H5T_STD_I32LE), H5Tclose, path);
+        case ColumnType::f64:
+            return checked(H5Tcopy(H5T_IEEE_F64LE), H5Tclose, path);
     }
     throw Defect("file_type: unknown column type");
 }
@@ -46,8 +49,9 @@ void ColumnWriter::create(hid_t file, std::size_t rows_in_chunk, bool grows) {
     const Handle space = checked(H5Screate_simple(1, &none, &most), H5Sclose, path_);
     const Handle type = file_type(spec_, path_);
     const Handle properties = creation_properties(spec_, rows_in_chunk, compress_, path_);
-    dataset_ = checked(H5Dcreate2(file, path_.c_str(), type.id(), space.id(), H5P_DEFAULT, properties.id(), H5P_DEFAULT),
-                       H5Dclose, path_);
+    dataset_ =
+        checked(H5Dcreate2(file, path_.c_str(), type.id(), space.id(), H5P_DEFAULT, properties.id(), H5P_DEFAULT),
+                H5Dclose, path_);
     write_text(dataset_.id(), "units", spec_.units);
     write_text(dataset_.id(), "description", spec_.description);
 }
@@ -56,7 +60,9 @@ void ColumnWriter::write(const EncodedChunk& chunk, std::size_t count) {
     const hsize_t offset = rows_;
     rows_ += count;
     check(H5Dset_extent(dataset_.id(), &rows_), path_);
-    check(H5Dwrite_chunk(dataset_.id(), H5P_DEFAULT, chunk.skipped, &offset, chunk.bytes.size(), chunk.bytes.data()), path_);
+    check(
+        H5Dwrite_chunk(dataset_.id(), H5P_DEFAULT, chunk.skipped, &offset, chunk.bytes.size(), chunk.bytes.data()),
+        path_);
 }
 
 void ColumnWriter::cut(std::size_t rows) {

@@ -22,7 +22,7 @@ public:
     OutcomeReader& operator=(OutcomeReader&&) noexcept;
 
     const FileFacts& facts() const;
-    bool complete() const;                       // all planned literatures are in it
+    bool complete() const;  // all planned literatures are in it
     std::uint64_t literatures_done() const;
     std::uint64_t literatures_planned() const;
 
@@ -33,15 +33,16 @@ public:
 
     /// A column's values, all or `count` from `first` on. Throws RunError.
     ColumnData read(const std::string& table, const std::string& column) const;
-    ColumnData read(const std::string& table, const std::string& column, std::size_t first, std::size_t count) const;
+    ColumnData read(const std::string& table, const std::string& column, std::size_t first,
+                    std::size_t count) const;
 
 private:
     struct Content;
     std::unique_ptr<Content> content_;
 };
 
-/// SHA-256 over every table's columns, their names and the SHA-256 of their values, in the order of the file: equal for equal
-/// content, whatever the file's layout.
+/// SHA-256 over every table's columns, their names and the SHA-256 of their values, in the order of the file: equal
+/// for equal content, whatever the file's layout.
 std::string payload_digest(const OutcomeReader& file);
 
 }  // namespace lacuna

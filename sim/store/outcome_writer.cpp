@@ -20,7 +20,7 @@ namespace {
 namespace fs = std::filesystem;
 
 constexpr std::size_t most_waiting_bytes = 12u << 20;  // of a table
-constexpr std::size_t chunks_at_once = 64;  // encoded and waiting to be written, at most 32 MB
+constexpr std::size_t chunks_at_once = 64;             // encoded and waiting to be written, at most 32 MB
 
 [[noreturn]] void refuse(const std::string& path, std::string message, std::string remedy) {
     Fault fault;

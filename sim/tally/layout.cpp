@@ -31,8 +31,8 @@ std::string join(std::initializer_list<std::string_view> parts) {
 
 constexpr std::array<std::string_view, sums> sum_names{"estimate_sum", "abs_estimate_sum", "abs_effect_sum"};
 constexpr std::array<std::string_view, sums> sum_texts{
-    "sum of estimates oriented by the sign of the question's effect",
-    "sum of absolute estimates", "sum of absolute effects of the questions"};
+    "sum of estimates oriented by the sign of the question's effect", "sum of absolute estimates",
+    "sum of absolute effects of the questions"};
 constexpr std::array<std::string_view, standings> standing_names{"studied", "any_finding", "majority"};
 constexpr std::array<std::string_view, standings> standing_texts{
     "with at least one study", "with at least one finding", "with findings in more than half of the studies"};
@@ -84,13 +84,15 @@ std::vector<ColumnSpec> Layout::columns(const std::vector<std::string>& labs) co
                 const std::string claim(claim_names[c]);
                 for (std::size_t t = 0; t < truths; ++t) {
                     const std::string truth(truth_names[t]);
-                    put(studies(kind, Scope(s), Truth(t), Claim(c)), join({"studies", scope, truth, claim}) + suffix,
-                        "studies", scope + " studies on " + truth + " questions with an outcome " + claim + whose);
+                    put(studies(kind, Scope(s), Truth(t), Claim(c)),
+                        join({"studies", scope, truth, claim}) + suffix, "studies",
+                        scope + " studies on " + truth + " questions with an outcome " + claim + whose);
                 }
                 for (std::size_t w = 0; w < sums; ++w) {
-                    put(sum(kind, Scope(s), Claim(c), Sum(w)), join({sum_names[w], scope, claim}) + suffix, "effect",
-                        std::string(sum_texts[w]) + " over " + scope + " studies of real questions with an outcome " +
-                            claim + whose);
+                    put(sum(kind, Scope(s), Claim(c), Sum(w)), join({sum_names[w], scope, claim}) + suffix,
+                        "effect",
+                        std::string(sum_texts[w]) + " over " + scope +
+                            " studies of real questions with an outcome " + claim + whose);
                 }
             }
             put(participants(kind, Scope(s)), join({"participants", scope}) + suffix, "participants",

@@ -84,7 +84,8 @@ std::uint16_t bin_of(double ratio) {
     }
     const double top = static_cast<double>(ratio_bins::per_sign - 1);
     const auto within = static_cast<std::size_t>(std::fmin(std::fmax(step, 0.0), top));
-    return static_cast<std::uint16_t>(ratio < 0.0 ? ratio_bins::per_sign - 1 - within : ratio_bins::per_sign + within);
+    return static_cast<std::uint16_t>(ratio < 0.0 ? ratio_bins::per_sign - 1 - within
+                                                  : ratio_bins::per_sign + within);
 }
 
 void list_real(const StudyColumns& in, std::vector<std::uint32_t>& real) {
@@ -110,7 +111,8 @@ void make_study_facts(const StudyColumns& in, EffectScale scale, StudyFacts& out
     out.participants = in.participants;
     std::uint16_t* cell = out.cell.data();
     for (std::size_t s = 0; s < in.count; ++s) cell[s] = static_cast<std::uint16_t>(in.truth[s] * 4u + in.claim[s]);
-    for (std::size_t s = 0; in.kind && s < in.count; ++s) cell[s] = static_cast<std::uint16_t>(cell[s] + in.kind[s] * 12u);
+    for (std::size_t s = 0; in.kind && s < in.count; ++s)
+        cell[s] = static_cast<std::uint16_t>(cell[s] + in.kind[s] * 12u);
     list_real(in, out.real);
     const std::size_t real = out.real.size();
     out.estimate.resize(real);

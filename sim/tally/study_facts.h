@@ -44,14 +44,14 @@ struct StudyColumns {
 
 struct StudyFacts {
     // Of every study.
-    std::vector<std::uint16_t> cell;        // (kind * 3 + truth) * 4 + claim
+    std::vector<std::uint16_t> cell;              // (kind * 3 + truth) * 4 + claim
     const std::uint32_t* participants = nullptr;  // the column given
     // Of the studies of real questions, which alone have effects to compare with.
-    std::vector<std::uint32_t> real;        // their entries
-    std::vector<std::int64_t> estimate;     // oriented by the sign of the effect, in units of the scale
-    std::vector<std::int64_t> effect;       // absolute, in units of the scale
-    std::vector<std::uint16_t> bin;         // of the ratio estimate / effect
-    std::vector<double> gathered;           // scratch
+    std::vector<std::uint32_t> real;     // their entries
+    std::vector<std::int64_t> estimate;  // oriented by the sign of the effect, in units of the scale
+    std::vector<std::int64_t> effect;    // absolute, in units of the scale
+    std::vector<std::uint16_t> bin;      // of the ratio estimate / effect
+    std::vector<double> gathered;        // scratch
 };
 
 /// Fills `facts` from columns. `scale`: the order of magnitude of effects and estimates, a power of 2.

@@ -50,7 +50,8 @@ void Tally::count_studies(const StudyFacts& facts, const std::uint8_t* status) {
     for (std::size_t begin = 0; begin < count; begin += stretch) {
         const std::size_t end = std::min(count, begin + stretch);
         for (std::size_t s = begin; s < end; ++s) {
-            packed[(s % lanes) * stride + status[s] * cells_ + cell[s]] += (std::uint64_t{1} << 40) + facts.participants[s];
+            packed[(s % lanes) * stride + status[s] * cells_ + cell[s]] +=
+                (std::uint64_t{1} << 40) + facts.participants[s];
         }
         for (std::size_t i = 0; i < packed_.size(); ++i) {
             Cell& sum = sums_[i % stride];
@@ -139,7 +140,8 @@ struct Tally::Octaves {
                 const std::uint32_t* bins = &ratios[(status * 2 + finding) * ratio_bins::count];
                 for (std::size_t o = 0; o < count; ++o) {
                     std::uint64_t sum = 0;
-                    for (std::size_t b = 0; b < ratio_bins::per_octave; ++b) sum += bins[o * ratio_bins::per_octave + b];
+                    for (std::size_t b = 0; b < ratio_bins::per_octave; ++b)
+                        sum += bins[o * ratio_bins::per_octave + b];
                     sums[status][finding][o] = sum;
                 }
             }
@@ -209,9 +211,12 @@ void Tally::put_studies(const Layout& layout, std::vector<double>& row) const {
         if (truth != Truth::real_negative) continue;  // both real truths are in now
         for (std::size_t s = 0; s < scopes; ++s) {
             const Cell& its = effects[static_cast<std::size_t>(claim)][s];
-            row[layout.sum(kind, Scope(s), claim, Sum::estimate)] = static_cast<double>(its.estimate) * scale_.unit();
-            row[layout.sum(kind, Scope(s), claim, Sum::abs_estimate)] = static_cast<double>(its.abs_estimate) * scale_.unit();
-            row[layout.sum(kind, Scope(s), claim, Sum::abs_effect)] = static_cast<double>(its.effect) * scale_.unit();
+            row[layout.sum(kind, Scope(s), claim, Sum::estimate)] =
+                static_cast<double>(its.estimate) * scale_.unit();
+            row[layout.sum(kind, Scope(s), claim, Sum::abs_estimate)] =
+                static_cast<double>(its.abs_estimate) * scale_.unit();
+            row[layout.sum(kind, Scope(s), claim, Sum::abs_effect)] =
+                static_cast<double>(its.effect) * scale_.unit();
         }
     }
 }

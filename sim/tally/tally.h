@@ -46,8 +46,8 @@ public:
 private:
     __extension__ using Wide = __int128;
     struct Cell {
-        std::uint64_t count = 0, participants = 0;            // all studies
-        Wide estimate = 0, abs_estimate = 0, effect = 0;      // studies of real questions, units of the scale
+        std::uint64_t count = 0, participants = 0;        // all studies
+        Wide estimate = 0, abs_estimate = 0, effect = 0;  // studies of real questions, units of the scale
     };
     struct Effects {
         std::int64_t estimate = 0, abs_estimate = 0, effect = 0, unused = 0;

@@ -1,8 +1,7 @@
 #include "sim/variate/gamma.h"
 
-#include <cmath>
-
 #include <boost/random/normal_distribution.hpp>
+#include <cmath>
 
 namespace lacuna {
 

@@ -1,10 +1,9 @@
 #include "sim/variate/sampler.h"
 
 #include <algorithm>
-#include <cmath>
-
 #include <boost/random/normal_distribution.hpp>
 #include <boost/random/poisson_distribution.hpp>
+#include <cmath>
 
 #include "sim/base/fault.h"
 #include "sim/variate/gamma.h"
@@ -22,9 +21,12 @@ bool from_normal(Family family) {
 
 double of_normal(const Distribution& d, double z) {
     switch (d.family) {
-        case Family::normal: return d.first + d.second * z;
-        case Family::half_normal: return d.first * std::fabs(z);
-        default: return d.first * std::exp(d.second * z);  // lognormal
+        case Family::normal:
+            return d.first + d.second * z;
+        case Family::half_normal:
+            return d.first * std::fabs(z);
+        default:
+            return d.first * std::exp(d.second * z);  // lognormal
     }
 }
 
@@ -44,16 +46,22 @@ Sampler::Sampler(Distribution distribution)
 double Sampler::one_draw(Stream& stream) const {
     const Distribution& d = distribution_;
     switch (d.family) {
-        case Family::fixed: return d.first;
+        case Family::fixed:
+            return d.first;
         case Family::normal:
         case Family::half_normal:
-        case Family::lognormal: return of_normal(d, boost::random::normal_distribution<double>()(stream));
-        case Family::gamma: return gamma_variate(stream, d.second) * d.first / d.second;
-        case Family::beta: return beta_variate(stream, d.first * d.second, (1.0 - d.first) * d.second);
-        case Family::uniform: return d.first + (d.second - d.first) * stream.uniform();
+        case Family::lognormal:
+            return of_normal(d, boost::random::normal_distribution<double>()(stream));
+        case Family::gamma:
+            return gamma_variate(stream, d.second) * d.first / d.second;
+        case Family::beta:
+            return beta_variate(stream, d.first * d.second, (1.0 - d.first) * d.second);
+        case Family::uniform:
+            return d.first + (d.second - d.first) * stream.uniform();
         case Family::poisson:
             return static_cast<double>(boost::random::poisson_distribution<long, double>(d.first)(stream));
-        case Family::discrete: return d.values[alias_.pick(stream.uniform())];
+        case Family::discrete:
+            return d.values[alias_.pick(stream.uniform())];
     }
     throw Defect("Sampler: unknown family");
 }

@@ -27,8 +27,8 @@ private:
 
     Distribution distribution_;
     bool constant_;
-    bool invert_;        // by quantile function
-    AliasTable alias_;   // discrete only
+    bool invert_;       // by quantile function
+    AliasTable alias_;  // discrete only
 };
 
 }  // namespace lacuna

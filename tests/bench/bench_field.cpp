@@ -76,8 +76,11 @@ int main(int argc, char** argv) {
         speedup.push_back(one.back() / two.back());
     }
     const double ns = 1e9 / static_cast<double>(studies);
-    fmt::print("{} studies in one literature, median of {} rounds in turns, vectors: {}\n", studies, rounds, vector_target());
+    fmt::print("{} studies in one literature, median of {} rounds in turns, vectors: {}\n", studies, rounds,
+               vector_target());
     fmt::print("bare draws            {:7.2f} ns/study\n", ns * median(draws));
-    fmt::print("engine, one thread    {:7.2f} ns/study   {:.2f} times the bare draws\n", ns * median(one), median(to_draws));
-    fmt::print("engine, two threads   {:7.2f} ns/study   {:.2f} times as fast as one\n", ns * median(two), median(speedup));
+    fmt::print("engine, one thread    {:7.2f} ns/study   {:.2f} times the bare draws\n", ns * median(one),
+               median(to_draws));
+    fmt::print("engine, two threads   {:7.2f} ns/study   {:.2f} times as fast as one\n", ns * median(two),
+               median(speedup));
 }

@@ -18,9 +18,9 @@ int main(int argc, char** argv) {
     const auto studies = static_cast<std::uint64_t>(argc > 1 ? std::atof(argv[1]) : 1e7);
     const std::string path = std::string(argc > 2 ? argv[2] : ".") + "/bench_store.h5";
     const std::string n = std::to_string(studies / 10);
-    const Scenario scenario =
-        load_scenario(std::string(LACUNA_CONFIGS) + "/published-rates.toml",
-                      {{"run.literatures", "10"}, {"field.questions", n}, {"lab.1.lines", n}, {"store.detail", "studies"}});
+    const Scenario scenario = load_scenario(
+        std::string(LACUNA_CONFIGS) + "/published-rates.toml",
+        {{"run.literatures", "10"}, {"field.questions", n}, {"lab.1.lines", n}, {"store.detail", "studies"}});
     const auto start = std::chrono::steady_clock::now();
     OutcomeWriter writer(path, true, {}, detail_tables(scenario), true, parallel_for_each_index);
     Sinks sinks;

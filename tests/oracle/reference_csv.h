@@ -29,9 +29,12 @@ inline std::vector<std::string> fields(const std::string& line) {
     std::vector<std::string> cells(1);
     bool quoted = false;
     for (const char c : line) {
-        if (c == '"') quoted = !quoted;
-        else if (c == ',' && !quoted) cells.emplace_back();
-        else if (c != '\r') cells.back() += c;
+        if (c == '"')
+            quoted = !quoted;
+        else if (c == ',' && !quoted)
+            cells.emplace_back();
+        else if (c != '\r')
+            cells.back() += c;
     }
     return cells;
 }

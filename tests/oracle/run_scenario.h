@@ -19,7 +19,9 @@ public:
         RunOptions options;
         options.threads = threads;
         Sinks sinks;
-        sinks.literature = [this](std::uint32_t, const std::vector<std::vector<double>>& rows) { accumulator_.add(rows); };
+        sinks.literature = [this](std::uint32_t, const std::vector<std::vector<double>>& rows) {
+            accumulator_.add(rows);
+        };
         sinks.rows = [](const std::string&, Batch&&) {};
         outcome = simulate(scenario, options, sinks);
         results_ = accumulator_.results();
@@ -29,7 +31,8 @@ public:
     Estimate estimate(const std::string& metric, Scope scope, std::size_t regime = 0,
                       const std::string& stratum = "all") const {
         for (const Result& r : results_) {
-            if (r.metric == metric && r.scope == scope && r.regime == regime && r.stratum == stratum) return r.estimate;
+            if (r.metric == metric && r.scope == scope && r.regime == regime && r.stratum == stratum)
+                return r.estimate;
         }
         throw std::runtime_error("no result " + metric + " " + stratum);
     }

@@ -45,7 +45,8 @@ double kolmogorov(const Sorted& sorted, Cdf cdf) {
     const double n = static_cast<double>(sorted.size());
     for (std::size_t i = 0; i < sorted.size(); ++i) {
         const double at = cdf(sorted[i]);
-        distance = std::fmax(distance, std::fmax(at - static_cast<double>(i) / n, static_cast<double>(i + 1) / n - at));
+        distance =
+            std::fmax(distance, std::fmax(at - static_cast<double>(i) / n, static_cast<double>(i + 1) / n - at));
     }
     return distance * std::sqrt(n);
 }

@@ -1,7 +1,8 @@
 // Simulated literatures against closed forms and published values, through the config and the engine.
+#include <fmt/format.h>
+
 #include <catch2/catch.hpp>
 #include <cmath>
-#include <fmt/format.h>
 
 #include "sim/design/design.h"
 #include "sim/theory/theory.h"
@@ -19,15 +20,18 @@ namespace {
 std::string one_study_field(std::uint64_t studies, const std::string& field, const std::string& design,
                             const std::string& rest) {
     const std::uint64_t each = studies / 50;
-    return fmt::format("[run]\nseed = 77\nliteratures = 50\n[field]\nquestions = {0}\nlabs = 1\n{1}\n[design]\n{2}\n"
-                       "[[lab]]\nname = \"lab\"\nlines = {0}\n{3}\n",
-                       each, field, design, rest);
+    return fmt::format(
+        "[run]\nseed = 77\nliteratures = 50\n[field]\nquestions = {0}\nlabs = 1\n{1}\n[design]\n{2}\n"
+        "[[lab]]\nname = \"lab\"\nlines = {0}\n{3}\n",
+        each, field, design, rest);
 }
 
 /// The effect at which a two-sided z test of one observation has this power.
 double effect_of_power(double power, double alpha) {
     const double c = critical_value(Test::known_variance, infinity, alpha, 2);
-    const auto chance = [c](double d) { return 0.5 * std::erfc((c - d) / std::sqrt(2.0)) + 0.5 * std::erfc((c + d) / std::sqrt(2.0)); };
+    const auto chance = [c](double d) {
+        return 0.5 * std::erfc((c - d) / std::sqrt(2.0)) + 0.5 * std::erfc((c + d) / std::sqrt(2.0));
+    };
     double low = 0.0;
     double high = 20.0;
     while (high - low > 1e-13) (chance(0.5 * (low + high)) < power ? low : high) = 0.5 * (low + high);
@@ -36,7 +40,8 @@ double effect_of_power(double power, double alpha) {
 
 }  // namespace
 
-TEST_CASE("False discovery rate from true rate, alpha and power: Ioannidis (2005), no bias, every row", "[validation]") {
+TEST_CASE("False discovery rate from true rate, alpha and power: Ioannidis (2005), no bias, every row",
+          "[validation]") {
     const auto table = oracle::read_reference("ppv_bias_grid.csv");
     std::size_t rows = 0;
     for (const auto& row : table.rows) {
@@ -44,7 +49,9 @@ TEST_CASE("False discovery rate from true rate, alpha and power: Ioannidis (2005
         ++rows;
         const double alpha = number(row, "alpha");
         const auto simulated = oracle::simulate_text(one_study_field(
-            2'000'000, fmt::format("true_rate = {}\neffect = {}", number(row, "prior"), effect_of_power(number(row, "power"), alpha)),
+            2'000'000,
+            fmt::format("true_rate = {}\neffect = {}", number(row, "prior"),
+                        effect_of_power(number(row, "power"), alpha)),
             fmt::format("test = \"known-variance\"\nalpha = {}\nsize = {{ plan = \"fixed\", n = 1 }}", alpha), ""));
         INFO("power " << row.at("power") << " alpha " << row.at("alpha") << " R " << row.at("R"));
         // More than 100 checks in this file: five standard errors.
@@ -55,7 +62,8 @@ TEST_CASE("False discovery rate from true rate, alpha and power: Ioannidis (2005
     CHECK(rows > 50);
 }
 
-TEST_CASE("Published literatures of true and null effects: all closed forms of the reference table", "[validation]") {
+TEST_CASE("Published literatures of true and null effects: all closed forms of the reference table",
+          "[validation]") {
     const auto table = oracle::read_reference("literature_closed_form.csv");
     REQUIRE(table.rows.size() == 384);
     for (const auto& row : table.rows) {
@@ -66,7 +74,8 @@ TEST_CASE("Published literatures of true and null effects: all closed forms of t
         const auto simulated = oracle::simulate_text(one_study_field(
             1'000'000, fmt::format("true_rate = {}\neffect = {}", number(row, "pi1"), number(row, "d")),
             fmt::format("alpha = {}\nsize = {{ plan = \"fixed\", n = {} }}", alpha, row.at("n")),
-            fmt::format("[[journal]]\nname = \"j\"\naccept = {{ by = \"p\", sides = 1, steps = [{}, {}], chance = [1.0, {}, {}] }}",
+            fmt::format("[[journal]]\nname = \"j\"\naccept = {{ by = \"p\", sides = 1, steps = [{}, {}], chance = "
+                        "[1.0, {}, {}] }}",
                         alpha / 2, 1 - alpha / 2, w_ns, w_neg)));
         INFO("n " << row.at("n") << " d " << row.at("d") << " pi1 " << row.at("pi1") << " alpha " << row.at("alpha")
                   << " w_ns " << row.at("w_ns") << " w_neg " << row.at("w_neg"));
@@ -100,9 +109,12 @@ TEST_CASE("Gelman & Carlin (2014): type S and type M of underpowered designs, th
             one_study_field(20'000'000, fmt::format("true_rate = 1.0\neffect = {}", d),
                             "test = \"known-variance\"\nalpha = 0.05\nsize = { plan = \"fixed\", n = 1 }", ""));
         INFO("D " << row.at("D") << " SE " << row.at("SE"));
-        CHECK(std::fabs(simulated.z("power", Scope::conducted, number(row, "power_here"))) < bound_in_standard_errors);
-        CHECK(std::fabs(simulated.z("wrong_sign_rate", Scope::conducted, number(row, "typeS_here"))) < bound_in_standard_errors);
-        CHECK(std::fabs(simulated.z("exaggeration_ratio", Scope::conducted, number(row, "exagg_here"))) < bound_in_standard_errors);
+        CHECK(std::fabs(simulated.z("power", Scope::conducted, number(row, "power_here"))) <
+              bound_in_standard_errors);
+        CHECK(std::fabs(simulated.z("wrong_sign_rate", Scope::conducted, number(row, "typeS_here"))) <
+              bound_in_standard_errors);
+        CHECK(std::fabs(simulated.z("exaggeration_ratio", Scope::conducted, number(row, "exagg_here"))) <
+              bound_in_standard_errors);
         // The published, rounded values: type S to its two digits.
         CHECK(simulated.estimate("wrong_sign_rate", Scope::conducted).value.value() ==
               Approx(number(row, "typeS_published")).margin(0.01));
@@ -119,7 +131,8 @@ TEST_CASE("published-rates.toml: 10^8 studies agree with the quadrature over siz
         for (std::size_t s = 0; s < scope_names.size(); ++s) {
             if (expected.scope != scope_names[s] || expected.scope == "written") continue;
             const Estimate e = simulated.estimate(expected.metric, Scope(s));
-            INFO(expected.metric << " " << expected.scope << " " << *e.value << " " << expected.value << " " << *e.mcse);
+            INFO(expected.metric << " " << expected.scope << " " << *e.value << " " << expected.value << " "
+                                 << *e.mcse);
             CHECK(std::fabs(*e.value - expected.value) <= bound_in_standard_errors * *e.mcse);
             ++checked;
         }
@@ -127,6 +140,8 @@ TEST_CASE("published-rates.toml: 10^8 studies agree with the quadrature over siz
     CHECK(checked >= 15);
     // The baseline script printed 0.16114 and 1.80850 at 10^7 studies, with standard errors of about
     // 0.0003 and 0.0007 (binomial; spread of the estimates): the same field.
-    CHECK(simulated.estimate("false_discovery_rate", Scope::published).value.value() == Approx(0.16114).margin(4 * 0.0003));
-    CHECK(simulated.estimate("effect_inflation", Scope::published).value.value() == Approx(1.80850).margin(4 * 0.0007));
+    CHECK(simulated.estimate("false_discovery_rate", Scope::published).value.value() ==
+          Approx(0.16114).margin(4 * 0.0003));
+    CHECK(simulated.estimate("effect_inflation", Scope::published).value.value() ==
+          Approx(1.80850).margin(4 * 0.0007));
 }

@@ -117,6 +117,7 @@ TEST_CASE("the key reference lists every key that a resolved config can hold") {
         INFO(key);
         CHECK(reference.find('\n' + key + ": ") != std::string::npos);
     }
-    CHECK(reference.find("\ndistribution.sdlog: number, between 0 and 100; default: required. ") != std::string::npos);
+    CHECK(reference.find("\ndistribution.sdlog: number, between 0 and 100; default: required. ") !=
+          std::string::npos);
     CHECK(reference.find("\nlab.studies.failures: 1 to 4096; default: required. ") != std::string::npos);
 }

@@ -1,7 +1,8 @@
+#include <hwy/targets.h>
+
 #include <algorithm>
 #include <catch2/catch.hpp>
 #include <cmath>
-#include <hwy/targets.h>
 
 #include "sim/design/design.h"
 #include "sim/design/sampling.h"
@@ -99,9 +100,9 @@ TEST_CASE("Claims and estimates follow from the statistic", "[design]") {
         const Drawn d = draw(science, table, {17, nullptr, 5001}, 0.1);
         std::size_t reversed = 0;
         for (std::size_t i = 0; i < d.statistic.size(); ++i) {
-            const Claim expected = d.statistic[i] > critical                    ? Claim::positive
+            const Claim expected = d.statistic[i] > critical                  ? Claim::positive
                                    : sides == 2 && d.statistic[i] < -critical ? Claim::reversed
-                                                                                : Claim::inconclusive;
+                                                                              : Claim::inconclusive;
             REQUIRE(Claim(d.claim[i]) == expected);
             REQUIRE(d.estimate[i] == Approx(d.statistic[i] * std::sqrt(0.2)).epsilon(1e-14));
             reversed += expected == Claim::reversed;
@@ -215,7 +216,8 @@ TEST_CASE("Statistics drawn from their joint distribution match participants dra
             double worst = 0.0;
             for (std::size_t i = 0, j = 0; i < a.size() && j < b.size();) {
                 (a[i] <= b[j] ? i : j) += 1;
-                worst = std::max(worst, std::fabs(static_cast<double>(i) - static_cast<double>(j)) / static_cast<double>(count));
+                worst = std::max(
+                    worst, std::fabs(static_cast<double>(i) - static_cast<double>(j)) / static_cast<double>(count));
             }
             return worst * std::sqrt(static_cast<double>(count) / 2.0);
         };

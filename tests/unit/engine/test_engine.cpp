@@ -1,7 +1,8 @@
 // What must hold of a run whatever the scenario: same bits, shared draws, rules that stay downstream.
+#include <fmt/format.h>
+
 #include <catch2/catch.hpp>
 #include <cmath>
-#include <fmt/format.h>
 #include <map>
 
 #include "sim/engine/run.h"
@@ -58,7 +59,8 @@ bool same(const Recorded& a, const Recorded& b) {
 }
 
 template <class T>
-const std::vector<T>& column(const Scenario& scenario, const Recorded& all, const std::string& table, const std::string& name) {
+const std::vector<T>& column(const Scenario& scenario, const Recorded& all, const std::string& table,
+                             const std::string& name) {
     for (const TableSpec& spec : detail_tables(scenario)) {
         if (spec.name != table) continue;
         for (std::size_t c = 0; c < spec.columns.size(); ++c) {
@@ -115,8 +117,8 @@ TEST_CASE("1, 2 and 7 threads give the same bits, in small literatures and in on
     const Recorded one = run(small, 1);
     CHECK(same(one, run(small, 2)));
     CHECK(same(one, run(small, 7)));
-    const Scenario huge = parse_scenario(field + rules, "t",
-                                         {{"field.questions", "400000"}, {"field.labs", "20000"}, {"run.literatures", "2"}});
+    const Scenario huge = parse_scenario(
+        field + rules, "t", {{"field.questions", "400000"}, {"field.labs", "20000"}, {"run.literatures", "2"}});
     const Recorded whole = run(huge, 1);
     CHECK(whole.outcome.studies > 500000);
     CHECK(same(whole, run(huge, 2)));
@@ -133,8 +135,11 @@ TEST_CASE("A literature does not depend on how many others there are", "[engine]
 }
 
 TEST_CASE("A regime that changes nothing differs by exactly nothing", "[engine]") {
-    const oracle::Simulated simulated(parse_scenario(
-        field + rules + "[[regime]]\nname = \"a\"\n[[regime]]\nname = \"b\"\n[[regime]]\nname = \"c\"\nset = { \"writing.chance.null\" = 0.3 }\n", "t", {}));
+    const oracle::Simulated simulated(
+        parse_scenario(field + rules +
+                           "[[regime]]\nname = \"a\"\n[[regime]]\nname = \"b\"\n[[regime]]\nname = \"c\"\nset = { "
+                           "\"writing.chance.null\" = 0.3 }\n",
+                       "t", {}));
     std::size_t compared = 0;
     for (const PairedDifference& d : simulated.differences()) {
         if (!d.estimate.value) continue;
@@ -149,7 +154,10 @@ TEST_CASE("A regime that changes nothing differs by exactly nothing", "[engine]"
 TEST_CASE("Rules change no conducted study, and a journal added behind changes no earlier decision", "[engine]") {
     const std::string studies = "[store]\ndetail = \"studies\"\n";
     const Scenario base = parse_scenario(field + rules + studies, "t", {});
-    const Scenario more = parse_scenario(field + rules + "[[journal]]\nname = \"third\"\naccept = { by = \"class\", supportive = 0.5, mixed = 0.5, null = 0.5 }\n" + studies,
+    const Scenario more = parse_scenario(field + rules +
+                                             "[[journal]]\nname = \"third\"\naccept = { by = \"class\", supportive "
+                                             "= 0.5, mixed = 0.5, null = 0.5 }\n" +
+                                             studies,
                                          "t", {{"submission.attempts", "3"}, {"writing.chance.null", "0.3"}});
     const Recorded a = run(base);
     const Recorded b = run(more);
@@ -169,10 +177,17 @@ TEST_CASE("Rules change no conducted study, and a journal added behind changes n
     }
     CHECK(published_by_third > 0);
     // A stricter alpha conducts the same data: the claims differ, the statistics do not.
-    const Recorded strict = run(parse_scenario(field + rules + studies, "t", {{"design.alpha", "0.01"}, {"lab.*.studies", "{ rule = \"fixed\", count = 2 }"}, {"lab.*.size", "{ plan = \"fixed\", n = 30 }"}}));
-    const Recorded loose = run(parse_scenario(field + rules + studies, "t", {{"lab.*.studies", "{ rule = \"fixed\", count = 2 }"}, {"lab.*.size", "{ plan = \"fixed\", n = 30 }"}}));
-    CHECK(column<double>(base, strict, "studies", "statistic") == column<double>(base, loose, "studies", "statistic"));
-    CHECK(column<std::uint8_t>(base, strict, "studies", "claim") != column<std::uint8_t>(base, loose, "studies", "claim"));
+    const Recorded strict = run(parse_scenario(field + rules + studies, "t",
+                                               {{"design.alpha", "0.01"},
+                                                {"lab.*.studies", "{ rule = \"fixed\", count = 2 }"},
+                                                {"lab.*.size", "{ plan = \"fixed\", n = 30 }"}}));
+    const Recorded loose = run(parse_scenario(
+        field + rules + studies, "t",
+        {{"lab.*.studies", "{ rule = \"fixed\", count = 2 }"}, {"lab.*.size", "{ plan = \"fixed\", n = 30 }"}}));
+    CHECK(column<double>(base, strict, "studies", "statistic") ==
+          column<double>(base, loose, "studies", "statistic"));
+    CHECK(column<std::uint8_t>(base, strict, "studies", "claim") !=
+          column<std::uint8_t>(base, loose, "studies", "claim"));
 }
 
 TEST_CASE("The stored studies agree with their literature's row", "[engine]") {
@@ -192,7 +207,8 @@ TEST_CASE("The stored studies agree with their literature's row", "[engine]") {
                 for (std::size_t c = 0; c < 4; ++c) {
                     double counted = 0.0;
                     for (std::size_t s = 0; s < literature.size(); ++s) {
-                        counted += literature[s] == std::int32_t(l) && truth[s] == t && claim[s] == c && status[s] >= scope;
+                        counted += literature[s] == std::int32_t(l) && truth[s] == t && claim[s] == c &&
+                                   status[s] >= scope;
                     }
                     CHECK(counted == row[layout.studies(0, Scope(scope), Truth(t), Claim(c))] +
                                          row[layout.studies(1, Scope(scope), Truth(t), Claim(c))]);
@@ -250,15 +266,18 @@ TEST_CASE("A stopped run hands on whole literatures, the first ones", "[engine]"
     CHECK(stopped.rows.size() > 0);
     CHECK(stopped.rows.size() < 4000);
     CHECK(stopped.outcome.literatures == stopped.rows.size());
-    const Recorded few = run(parse_scenario(field + rules, "t", {{"run.literatures", std::to_string(stopped.rows.size())}}));
+    const Recorded few =
+        run(parse_scenario(field + rules, "t", {{"run.literatures", std::to_string(stopped.rows.size())}}));
     CHECK(same(stopped, few));
 }
 
 TEST_CASE("Findings, writing and publication at their limits", "[engine]") {
     const auto everything = oracle::Simulated(parse_scenario(field, "t", {}));
-    for (const char* metric : {"false_discovery_rate", "positive_share", "type1_error", "power", "effect_inflation", "effect_inflation_median"}) {
+    for (const char* metric : {"false_discovery_rate", "positive_share", "type1_error", "power", "effect_inflation",
+                               "effect_inflation_median"}) {
         INFO(metric);
-        CHECK(everything.estimate(metric, Scope::published).value == everything.estimate(metric, Scope::conducted).value);
+        CHECK(everything.estimate(metric, Scope::published).value ==
+              everything.estimate(metric, Scope::conducted).value);
     }
     CHECK(everything.estimate("missing_share", Scope::published).value == 0.0);
     const auto nothing = oracle::Simulated(parse_scenario(field + "[writing]\nchance = 0.0\n", "t", {}));
@@ -270,20 +289,28 @@ TEST_CASE("Findings, writing and publication at their limits", "[engine]") {
 TEST_CASE("More selection by significance never lowers inflation or the false discovery rate", "[engine]") {
     std::string regimes;
     for (const char* w : {"1.0", "0.5", "0.2", "0.0"}) {
-        regimes += fmt::format("[[regime]]\nname = \"{0}\"\nset = {{ \"writing.chance\" = {{ supportive = 1.0, mixed = {0}, null = {0} }} }}\n", w);
+        regimes += fmt::format(
+            "[[regime]]\nname = \"{0}\"\nset = {{ \"writing.chance\" = {{ supportive = 1.0, mixed = {0}, null = "
+            "{0} }} }}\n",
+            w);
     }
-    const oracle::Simulated s(parse_scenario(field + "[writing]\nunit = \"study\"\n" + regimes, "t",
-                                             {{"run.literatures", "60"}, {"lab.*.studies", "{ rule = \"fixed\", count = 1 }"}}));
+    const oracle::Simulated s(
+        parse_scenario(field + "[writing]\nunit = \"study\"\n" + regimes, "t",
+                       {{"run.literatures", "60"}, {"lab.*.studies", "{ rule = \"fixed\", count = 1 }"}}));
     for (std::size_t r = 1; r < 4; ++r) {
-        CHECK(*s.estimate("effect_inflation_reports", Scope::published, r).value > *s.estimate("effect_inflation_reports", Scope::published, r - 1).value);
-        CHECK(*s.estimate("positive_share", Scope::published, r).value > *s.estimate("positive_share", Scope::published, r - 1).value);
+        CHECK(*s.estimate("effect_inflation_reports", Scope::published, r).value >
+              *s.estimate("effect_inflation_reports", Scope::published, r - 1).value);
+        CHECK(*s.estimate("positive_share", Scope::published, r).value >
+              *s.estimate("positive_share", Scope::published, r - 1).value);
     }
 }
 
 TEST_CASE("One question, one lab, one study", "[engine]") {
     const Recorded one = run(parse_scenario("[run]\nliteratures = 3\n[field]\nquestions = 1\nlabs = 1\n", "t", {}));
     CHECK(one.outcome.studies == 3);
-    const Recorded none = run(parse_scenario("[run]\nliteratures = 3\n[field]\nquestions = 5\nlabs = 1\n[[lab]]\nname = \"idle\"\nlines = 0\n", "t", {}));
+    const Recorded none = run(parse_scenario(
+        "[run]\nliteratures = 3\n[field]\nquestions = 5\nlabs = 1\n[[lab]]\nname = \"idle\"\nlines = 0\n", "t",
+        {}));
     CHECK(none.outcome.studies == 0);
     CHECK(none.rows.size() == 3);
 }

@@ -31,7 +31,9 @@ TEST_CASE("A p rule's chance at a level is that of the step its p falls in", "[p
 }
 
 TEST_CASE("A line is supportive when all its studies find in one direction", "[publication]") {
-    const auto either = [](unsigned n, unsigned up, unsigned down) { return class_of_line(n, up, down, Findings::either); };
+    const auto either = [](unsigned n, unsigned up, unsigned down) {
+        return class_of_line(n, up, down, Findings::either);
+    };
     CHECK(either(1, 1, 0) == ManuscriptClass::supportive);
     CHECK(either(3, 3, 0) == ManuscriptClass::supportive);
     CHECK(either(3, 0, 3) == ManuscriptClass::supportive);
@@ -39,7 +41,9 @@ TEST_CASE("A line is supportive when all its studies find in one direction", "[p
     CHECK(either(2, 1, 1) == ManuscriptClass::mixed);
     CHECK(either(3, 0, 1) == ManuscriptClass::mixed);
     CHECK(either(4, 0, 0) == ManuscriptClass::null);
-    const auto predicted = [](unsigned n, unsigned up, unsigned down) { return class_of_line(n, up, down, Findings::predicted); };
+    const auto predicted = [](unsigned n, unsigned up, unsigned down) {
+        return class_of_line(n, up, down, Findings::predicted);
+    };
     CHECK(predicted(3, 0, 3) == ManuscriptClass::null);
     CHECK(predicted(3, 2, 1) == ManuscriptClass::mixed);
     CHECK(predicted(2, 2, 0) == ManuscriptClass::supportive);

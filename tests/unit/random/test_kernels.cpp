@@ -1,7 +1,8 @@
+#include <hwy/targets.h>
+
 #include <algorithm>
 #include <catch2/catch.hpp>
 #include <cmath>
-#include <hwy/targets.h>
 #include <numeric>
 
 #include "sim/random/chance.h"
@@ -102,7 +103,8 @@ TEST_CASE("Neighbouring entities, studies, purposes, literatures and seeds are u
     };
     const double bound = 4.0 / std::sqrt(static_cast<double>(count));
     const auto base = all_normals({0, Purpose::study_data, 0, 0}, count);
-    for (const std::size_t lag : {1u, 2u, 15u, 16u, 17u, 32u}) CHECK(std::fabs(correlation(base, base, lag)) < bound);
+    for (const std::size_t lag : {1u, 2u, 15u, 16u, 17u, 32u})
+        CHECK(std::fabs(correlation(base, base, lag)) < bound);
     CHECK(std::fabs(correlation(base, all_normals({1, Purpose::study_data, 0, 0}, count), 0)) < bound);
     CHECK(std::fabs(correlation(base, all_normals({0, Purpose::study_effect, 0, 0}, count), 0)) < bound);
     CHECK(std::fabs(correlation(base, all_normals({0, Purpose::study_data, 1, 0}, count), 0)) < bound);
@@ -188,9 +190,11 @@ TEST_CASE("Decisions have their chance exactly, also where the word alone cannot
     for (const double p : {0.0, 1e-6, 1e-5, 0.05, 0.5, 0.3, 1 - 1e-6, 1.0}) {
         const Chance chance(p);
         std::vector<std::uint8_t> happened(count);
-        decide(key, address, count, drawn.data(), [&](std::size_t) -> const Chance& { return chance; },
-               [](std::size_t i) { return i; }, happened.data());
-        const double share = static_cast<double>(std::count(happened.begin(), happened.end(), 1)) / static_cast<double>(count);
+        decide(
+            key, address, count, drawn.data(), [&](std::size_t) -> const Chance& { return chance; },
+            [](std::size_t i) { return i; }, happened.data());
+        const double share =
+            static_cast<double>(std::count(happened.begin(), happened.end(), 1)) / static_cast<double>(count);
         INFO(p);
         if (p == 0.0 || p == 1.0) {
             CHECK(share == p);

@@ -163,7 +163,8 @@ TEST_CASE("Output that cannot be written is refused before anything runs", "[sto
 
 TEST_CASE("Rows of what was not finished are forgotten, written or waiting", "[store]") {
     const Folder folder;
-    for (const std::size_t kept : {std::size_t{0}, std::size_t{70000}, chunk_rows, std::size_t{150}, std::size_t{140000}}) {
+    for (const std::size_t kept :
+         {std::size_t{0}, std::size_t{70000}, chunk_rows, std::size_t{150}, std::size_t{140000}}) {
         const std::string path = folder / std::to_string(kept);
         OutcomeWriter writer(path, false, facts(), {spec()}, true, serial);
         writer.append("studies", rows(0, 140000));

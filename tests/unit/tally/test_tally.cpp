@@ -17,7 +17,8 @@ struct Columns {
     std::vector<std::uint32_t> participants;
 
     StudyColumns view() const {
-        return {truth.size(), truth.data(), claim.data(), kind.data(), estimate.data(), effect.data(), participants.data()};
+        return {truth.size(),    truth.data(),  claim.data(),       kind.data(),
+                estimate.data(), effect.data(), participants.data()};
     }
 };
 
@@ -71,7 +72,9 @@ TEST_CASE("A tally's row holds the counts and sums of a plain loop", "[tally]") 
             for (std::size_t claim = 0; claim < 4; ++claim) {
                 for (std::size_t truth = 0; truth < 3; ++truth) {
                     CHECK(row[layout.studies(kind, Scope(scope), Truth(truth), Claim(claim))] ==
-                          sum_where(c, ones, [&](std::size_t s) { return in(s) && c.truth[s] == truth && c.claim[s] == claim; }));
+                          sum_where(c, ones, [&](std::size_t s) {
+                              return in(s) && c.truth[s] == truth && c.claim[s] == claim;
+                          }));
                 }
                 const auto real = [&](std::size_t s) { return in(s) && c.truth[s] != 0 && c.claim[s] == claim; };
                 const auto sum = [&](Sum what) { return row[layout.sum(kind, Scope(scope), Claim(claim), what)]; };
@@ -114,7 +117,8 @@ TEST_CASE("Bins are ordered and hold their ratios", "[tally]") {
         REQUIRE(ratio_bins::lower_edge(b) < ratio_bins::lower_edge(b + 1));
     }
     Columns c;
-    std::vector<double> ratios{0.0, -0.0, 1e-9, -1e-9, 0.0078125, -0.0078125, 0.5, 1.0, -1.0, 1.01, 77.0, -77.0, 4000.0, 1e9, -1e9};
+    std::vector<double> ratios{0.0,  -0.0, 1e-9, -1e-9, 0.0078125, -0.0078125, 0.5, 1.0,
+                               -1.0, 1.01, 77.0, -77.0, 4000.0,    1e9,        -1e9};
     while (ratios.size() % 8 != 3) ratios.push_back(2.5);  // some by vectors, some by the scalar tail
     for (const double r : ratios) {
         c.truth.push_back(1);
@@ -124,7 +128,9 @@ TEST_CASE("Bins are ordered and hold their ratios", "[tally]") {
         c.participants.push_back(2);
     }
     StudyFacts facts;
-    make_study_facts({c.truth.size(), c.truth.data(), c.claim.data(), nullptr, c.estimate.data(), c.effect.data(), c.participants.data()}, scale, facts);
+    make_study_facts({c.truth.size(), c.truth.data(), c.claim.data(), nullptr, c.estimate.data(), c.effect.data(),
+                      c.participants.data()},
+                     scale, facts);
     for (std::size_t i = 0; i < ratios.size(); ++i) {
         const std::size_t bin = facts.bin[i];
         INFO(ratios[i] << " in bin " << bin);
@@ -141,7 +147,8 @@ TEST_CASE("Parts of a tally merge to the whole, and an empty one has no median",
     const Columns c = invented(5000);
     StudyFacts facts;
     make_study_facts(c.view(), scale, facts);
-    Tally whole(2, Findings::predicted, scale), part(2, Findings::predicted, scale), sum(2, Findings::predicted, scale);
+    Tally whole(2, Findings::predicted, scale), part(2, Findings::predicted, scale),
+        sum(2, Findings::predicted, scale);
     whole.add_studies(facts, c.status.data());
     whole.add_studies(facts, c.status.data());
     part.add_studies(facts, c.status.data());
@@ -160,9 +167,9 @@ TEST_CASE("Parts of a tally merge to the whole, and an empty one has no median",
 TEST_CASE("A majority is more than half of a question's studies, scope by scope", "[tally]") {
     Tally tally(1, Findings::either, scale);
     QuestionCount q;
-    q.studies[2] = 2;   // published, one of them a finding
+    q.studies[2] = 2;  // published, one of them a finding
     q.findings[2] = 1;
-    q.studies[0] = 1;   // unwritten finding
+    q.studies[0] = 1;  // unwritten finding
     q.findings[0] = 1;
     tally.add_question(true, q);
     const auto row = tally.row();

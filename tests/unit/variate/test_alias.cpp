@@ -21,8 +21,13 @@ std::vector<double> encoded(const AliasTable& table) {
 }  // namespace
 
 TEST_CASE("An alias table encodes its chances", "[variate]") {
-    const std::vector<std::vector<double>> cases{
-        {1.0}, {0.5, 0.5}, {0.0, 1.0}, {1.0, 0.0, 0.0}, {0.1, 0.2, 0.3, 0.4}, {3.0, 1.0, 0.0, 6.0}, {1e-12, 1.0, 1e-300}};
+    const std::vector<std::vector<double>> cases{{1.0},
+                                                 {0.5, 0.5},
+                                                 {0.0, 1.0},
+                                                 {1.0, 0.0, 0.0},
+                                                 {0.1, 0.2, 0.3, 0.4},
+                                                 {3.0, 1.0, 0.0, 6.0},
+                                                 {1e-12, 1.0, 1e-300}};
     for (const auto& chance : cases) {
         double sum = 0.0;
         for (const double c : chance) sum += c;

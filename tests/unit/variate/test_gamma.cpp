@@ -18,7 +18,8 @@ TEST_CASE("Gamma variates follow the incomplete gamma function (Boost.Math)", "[
             x.push_back(gamma_variate(stream, shape));
         }
         std::sort(x.begin(), x.end());
-        CHECK(oracle::kolmogorov(x, [&](double t) { return boost::math::gamma_p(shape, t); }) < oracle::kolmogorov_bound);
+        CHECK(oracle::kolmogorov(x, [&](double t) { return boost::math::gamma_p(shape, t); }) <
+              oracle::kolmogorov_bound);
     }
 }
 
@@ -34,7 +35,8 @@ TEST_CASE("Beta variates follow the incomplete beta function (Boost.Math), also 
         }
         if (shape[0] < 0.01) {
             // All mass at the ends: share near 1 is a / (a + b) to within 1e-2; compare at 1/2.
-            const double above = static_cast<double>(std::count_if(x.begin(), x.end(), [](double t) { return t > 0.5; })) / 1e5;
+            const double above =
+                static_cast<double>(std::count_if(x.begin(), x.end(), [](double t) { return t > 0.5; })) / 1e5;
             const double expected = boost::math::ibetac(shape[0], shape[1], 0.5);
             CHECK(std::fabs(oracle::z_score(above, expected, oracle::share_error(expected, 1e5))) < 4);
             continue;
