@@ -4,6 +4,7 @@
 #include <boost/math/quadrature/gauss.hpp>
 #include <boost/math/special_functions/log1p.hpp>
 #include <cmath>
+#include <limits>
 
 namespace lacuna {
 
@@ -17,6 +18,7 @@ public:
     double operator()(double chi) const {
         if (mode_ == 0.0) return -0.5 * chi * chi;
         const double u = (chi - mode_) / mode_;
+        if (u <= -1.0) return -std::numeric_limits<double>::infinity();  // pieces may begin a rounding from 0
         return power_ * (boost::math::log1pmx(u) - 0.5 * u * u);
     }
 

@@ -1,4 +1,5 @@
 // Simulated literatures against closed forms and published values, through the config and the engine.
+#include <filesystem>
 #include <fmt/format.h>
 
 #include <catch2/catch.hpp>
@@ -144,4 +145,33 @@ TEST_CASE("published-rates.toml: 10^8 studies agree with the quadrature over siz
           Approx(0.16114).margin(4 * 0.0003));
     CHECK(simulated.estimate("effect_inflation", Scope::published).value.value() ==
           Approx(1.80850).margin(4 * 0.0007));
+}
+
+TEST_CASE("Mixed scenarios: simulation against the quadrature, which shares no code with the chain", "[validation]") {
+    // Drawn at random over designs, sides, findings, units, line rules, journals, lab kinds, distributions.
+    std::size_t checks = 0;
+    double squares = 0.0;
+    for (const auto& file : std::filesystem::directory_iterator(std::string(LACUNA_REFERENCE) + "/../validation/mixed")) {
+        const Scenario scenario = load_scenario(file.path().string(), {});
+        const Theory theory = expectations(scenario.regimes[0]);
+        REQUIRE(theory.unavailable.empty());
+        const oracle::Simulated simulated(scenario);
+        for (const ExpectedValue& expected : theory.values) {
+            if (expected.scope == "written") continue;
+            const Scope scope = expected.scope == "published" ? Scope::published : Scope::conducted;
+            const Estimate e = simulated.estimate(expected.metric, scope);
+            if (!e.value || !e.mcse || *e.mcse == 0.0) continue;
+            const double z = (*e.value - expected.value) / *e.mcse;
+            INFO(file.path().filename() << " " << expected.metric << " " << expected.scope << ": " << *e.value
+                                        << " against " << expected.value);
+            CHECK(std::fabs(z) < 5);  // more than 100 checks
+            ++checks;
+            squares += z * z;
+        }
+    }
+    CHECK(checks > 300);
+    // Errors are neither too small nor too large: the mean square is 1, and even if each scenario's metrics
+    // all moved together its standard error would be below sqrt(2 / 13) = 0.4.
+    CHECK(std::fabs(squares / static_cast<double>(checks) - 1.0) < 4 * 0.4);
+    CHECK(squares / static_cast<double>(checks) > 0.5);
 }

@@ -155,3 +155,17 @@ TEST_CASE("Selected z values (reference/selection_normal.csv)", "[stats]") {
         CHECK(up.first / up.chance == Approx(number(row, "EZ_pos")).margin(1e-9).epsilon(0));
     }
 }
+
+TEST_CASE("Noncentralities of any smallness are as good as none", "[stats]") {
+    // Pieces of the quadrature may then lie within a rounding of zero; at 0 the central t is the answer.
+    for (const double df : {2.0, 4.0, 28.0}) {
+        for (const double noncentrality : {1e-6, 1e-12, 1e-18, 1e-100, 1e-300}) {
+            for (const double c : {0.5, 2.5, 30.0}) {
+                const double central = noncentral_t_upper(c, df, 0.0);
+                CHECK(noncentral_t_upper(c, df, noncentrality) == Approx(central).margin(noncentrality + 1e-12));
+                CHECK(std::fabs(noncentral_t_between(c, c + 1.0, df, noncentrality).chance -
+                                noncentral_t_between(c, c + 1.0, df, 0.0).chance) < noncentrality + 1e-12);
+            }
+        }
+    }
+}
