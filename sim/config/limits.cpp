@@ -10,9 +10,9 @@ namespace lacuna {
 
 namespace {
 
-constexpr double most_entities = 0x1p40;  // entities have 40 bits in the random streams
-constexpr double most_rows = 0x1p31;      // row numbers in the outcome file are 32-bit
-constexpr std::size_t most_cuts = 255;    // levels of p are stored as bytes
+constexpr double most_studies = 0x1p32;  // in a literature: its bins of ratios count in 32 bits
+constexpr double most_rows = 0x1p31;     // row numbers in the outcome file are 32-bit
+constexpr std::size_t most_cuts = 255;   // levels of p are stored as bytes
 
 double lines_per_lab(const std::vector<LabKind>& labs) {
     double lines = 0.0;
@@ -63,8 +63,8 @@ std::vector<Fault> limit_faults(const Document& document, const ConfigNode& root
     const bool rows_kept = document.store.detail != Detail::literatures;
     Limits limits(root);
     limits.demand(
-        studies < most_entities, "field.labs",
-        fmt::format("one literature would hold up to {:.3g} studies; the most is {:.3g}", studies, most_entities),
+        studies < most_studies, "field.labs",
+        fmt::format("one literature would hold up to {:.3g} studies; the most is {:.3g}", studies, most_studies),
         "lower field.labs, lab.lines or the length of lines, and simulate more literatures");
     limits.demand(
         !rows_kept || static_cast<double>(field.questions) < most_rows, "field.questions",
