@@ -17,7 +17,7 @@ int analyse_command(const Options& options, const BuildFacts& build) {
     }
     switch (options.format) {
         case Format::text:
-            print(full_tables(results));
+            print(full_tables(results) + provenance_line(results, build.version));
             break;
         case Format::json:
             print(results_json(results, build.version));

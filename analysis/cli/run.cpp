@@ -11,6 +11,7 @@
 #include "analysis/cli/progress_line.h"
 #include "analysis/cli/recording.h"
 #include "analysis/cli/run_results.h"
+#include "sim/base/fault.h"
 #include "analysis/cli/scenario_input.h"
 #include "analysis/report/machine.h"
 #include "analysis/report/number.h"
@@ -38,7 +39,7 @@ bool shows_progress(const Options& options) {
 void print_results(const Results& results, Format format, const BuildFacts& build) {
     switch (format) {
         case Format::text:
-            print(headline_tables(results));
+            print(headline_tables(results) + provenance_line(results, build.version));
             break;
         case Format::json:
             print(results_json(results, build.version));
@@ -79,11 +80,24 @@ RunOutcome simulate_into(Recording& recording, Accumulator& accumulator, const S
     }
 }
 
+/// Overwriting the config by its own outcomes is never meant.
+void refuse_own_config(const std::string& path, const std::string& config) {
+    std::error_code error;
+    if (!std::filesystem::equivalent(path, config, error) || error) return;
+    Fault fault;
+    fault.place.source = "command line";
+    fault.key = "--output";
+    fault.message = fmt::format("'{}' is the config itself", path);
+    fault.remedy = "give another name with -o";
+    throw InputError(std::move(fault));
+}
+
 }  // namespace
 
 int run_command(const Options& options, const BuildFacts& build) {
     const Scenario scenario = load_scenario(options.input, overrides(options));
     const std::string path = output_path(options);
+    refuse_own_config(path, options.input);
     const double start = steady_seconds();
     Accumulator accumulator = accumulator_for(scenario);
     Recording recording(path, options.overwrite, scenario, read_config_text(options.input), build);

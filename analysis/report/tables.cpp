@@ -160,4 +160,8 @@ std::string full_tables(const Results& results) {
     return tables(results, [](const std::string&, const std::string&) { return true; });
 }
 
+std::string provenance_line(const Results& results, const std::string& version) {
+    return fmt::format("lacuna {}, digest {}\n", version, results.digest);
+}
+
 }  // namespace lacuna

@@ -13,4 +13,7 @@ std::string headline_tables(const Results& results);
 /// Every estimand, scope by scope and stratum by stratum, and every difference between regimes.
 std::string full_tables(const Results& results);
 
+/// What to cite with the numbers: program version and digest of the run.
+std::string provenance_line(const Results& results, const std::string& version);
+
 }  // namespace lacuna

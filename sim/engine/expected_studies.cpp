@@ -1,3 +1,4 @@
+#include <algorithm>
 #include <cmath>
 
 #include "sim/design/design.h"
@@ -53,7 +54,7 @@ double finding_chance(const Science& science, const IntegerDistribution& sizes, 
                                          : power_predicted(science.design, plan, effect + node.x));
         }
     }
-    return some.empty() ? 0.0 : sum / static_cast<double>(some.size());
+    return some.empty() ? 0.0 : std::clamp(sum / static_cast<double>(some.size()), 0.0, 1.0);
 }
 
 double mean_studies(const Science& science, const LabKind& kind) {

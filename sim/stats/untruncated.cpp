@@ -110,11 +110,31 @@ double mass_between(const Distribution& d, double a, double b) {
     return std::max(0.0, through < 0.5 ? through - before : 1.0 - upper(d, b) - before);
 }
 
+namespace {
+
+/// x at which a tail of the beta holds `chance`, by bisection in log odds: Boost 1.74's own root finding
+/// gives up for some shapes. `tail` falls (upper) or rises (lower) with x.
+template <class Tail>
+double beta_quantile(double chance, bool rising, Tail tail) {
+    const auto value = [](double log_odds) { return 1.0 / (1.0 + std::exp(-log_odds)); };
+    double low = -700.0;
+    double high = 700.0;
+    for (int step = 0; step < 110; ++step) {
+        const double middle = 0.5 * (low + high);
+        const bool enough = rising ? tail(value(middle)) >= chance : tail(value(middle)) <= chance;
+        (enough ? high : low) = middle;
+    }
+    return value(high);
+}
+
+}  // namespace
+
 double quantile(const Distribution& d, double p) {
     if (is_listed(d)) return listed_quantile(d, p);
     if (p <= 0.0) return support_low(d);
     if (p >= 1.0) return support_high(d);
     if (d.family == Family::half_normal) return d.first * std::numbers::sqrt2 * boost::math::erf_inv(p);
+    if (d.family == Family::beta) return beta_quantile(p, true, [&](double x) { return lower(d, x); });
     return with_boost_law(d, [p](const auto& law) { return boost::math::quantile(law, p); });
 }
 
@@ -123,6 +143,7 @@ double upper_quantile(const Distribution& d, double q) {
     if (q >= 1.0) return support_low(d);
     if (q <= 0.0) return support_high(d);
     if (d.family == Family::half_normal) return d.first * std::numbers::sqrt2 * boost::math::erfc_inv(q);
+    if (d.family == Family::beta) return beta_quantile(q, false, [&](double x) { return upper(d, x); });
     return with_boost_law(d,
                           [q](const auto& law) { return boost::math::quantile(boost::math::complement(law, q)); });
 }

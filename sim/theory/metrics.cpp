@@ -1,5 +1,7 @@
 #include "sim/theory/metrics.h"
 
+#include <cmath>
+
 namespace lacuna {
 
 namespace {
@@ -34,8 +36,13 @@ Parts parts_of(const ScopeTotals& totals, Findings findings) {
 class Scoped {
 public:
     Scoped(std::string scope, std::vector<ExpectedValue>& values) : scope_(std::move(scope)), values_(values) {}
+    /// Totals are per line, so what is below the rounding of sums near 1 is nothing.
     void ratio(const char* metric, double numerator, double denominator) {
-        if (denominator > 0.0) values_.push_back({metric, scope_, numerator / denominator});
+        constexpr double rounding = 1e-15;
+        if (!(denominator > rounding)) return;
+        const double value = numerator / denominator;
+        values_.push_back(
+            {metric, scope_, std::fabs(value) < 1e-12 && std::fabs(numerator) < rounding ? 0.0 : value});
     }
 
 private:

@@ -165,3 +165,20 @@ TEST_CASE("Quadrature with breaks integrates a step exactly", "[stats]") {
     for (const Node& node : quadrature(d, 200, {0.0})) above += node.x > 0.0 ? node.weight : 0.0;
     CHECK(above == Approx(0.5 * std::erfc(-0.2 / 0.3 / std::sqrt(2.0))).epsilon(1e-12));
 }
+
+TEST_CASE("Beta quantiles invert the distribution for every shape (the incomplete beta function of Boost)", "[stats]") {
+    for (const double mean_of : {0.01, 0.1, 0.301, 0.5, 0.9}) {
+        for (const double concentration : {0.05, 0.5, 2.0, 2.698, 10.0, 1000.0}) {
+            Distribution d;
+            d.family = Family::beta;
+            d.first = mean_of;
+            d.second = concentration;
+            INFO(mean_of << ", " << concentration);
+            for (const double p : {0.1, 0.5, 0.9}) {
+                const double x = quantile(d, p);
+                if (x < 1e-290 || x > 1.0 - 1e-12) continue;  // all mass at an end
+                CHECK(cdf(d, x) == Approx(p).epsilon(1e-9));
+            }
+        }
+    }
+}
