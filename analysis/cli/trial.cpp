@@ -7,6 +7,7 @@
 #include <cmath>
 
 #include "sim/engine/run.h"
+#include "sim/literature/expected_studies.h"
 #include "sim/model/schema.h"
 #include "sim/tally/run_tables.h"
 

@@ -5,6 +5,7 @@
 
 #include "sim/engine/scheduler.h"
 #include "sim/literature/block.h"
+#include "sim/literature/expected_studies.h"
 
 namespace lacuna {
 

@@ -47,8 +47,4 @@ struct RunOutcome {
 /// entity only, so neither threads nor stops change a bit.
 RunOutcome simulate(const Scenario& scenario, const RunOptions& options, const Sinks& sinks);
 
-/// The expected number of studies of one literature under `science`: exact for fixed lines; for
-/// until-rules by a coarse quadrature, good to about a percent.
-double expected_studies(const Science& science);
-
 }  // namespace lacuna

@@ -4,6 +4,7 @@
 #include <cmath>
 
 #include "sim/literature/details.h"
+#include "sim/literature/expected_studies.h"
 
 namespace lacuna {
 
@@ -13,28 +14,26 @@ namespace {
 constexpr double studies_wanted = 16384.0;
 constexpr std::uint64_t most_questions = 65536;
 
-double upper_studies(const Science& science) {
-    double each = 0.0;
-    for (const LabKind& kind : science.labs) each += kind.share * mean(kind.lines) * kind.studies.longest();
-    return each * static_cast<double>(science.field.labs);
-}
-
 }  // namespace
 
-QuestionRange Blocks::range(std::uint64_t block) const {
-    return {block * questions_a_block, std::min(questions, (block + 1) * questions_a_block)};
+BlockRange Blocks::range(std::uint64_t block) const {
+    const std::uint64_t group = block / parts;
+    return {group * questions_each, std::min(questions, (group + 1) * questions_each), block % parts, parts};
 }
 
 Blocks cut_into_blocks(const Scenario& scenario) {
-    Blocks blocks{0, 0, 0, 0.0};
-    for (const Regime& regime : scenario.regimes) {
-        blocks.questions = std::max(blocks.questions, regime.science.field.questions);
-        blocks.studies_a_literature = std::max(blocks.studies_a_literature, upper_studies(regime.science));
+    Blocks blocks{0, 0, 1, 0, 0.0};
+    for (const std::size_t first : group_by_science(scenario.regimes).firsts) {
+        const Science& science = scenario.regimes[first].science;
+        blocks.questions = std::max(blocks.questions, science.field.questions);
+        blocks.studies_a_literature = std::max(blocks.studies_a_literature, expected_studies(science));
     }
-    const double per_question = blocks.studies_a_literature / static_cast<double>(blocks.questions);
-    const double wanted = std::clamp(studies_wanted / std::max(per_question, 1e-9), 32.0, double(most_questions));
-    blocks.questions_a_block = static_cast<std::uint64_t>(std::ceil(wanted / 32.0)) * 32;
-    blocks.count = (blocks.questions + blocks.questions_a_block - 1) / blocks.questions_a_block;
+    const double a_question = blocks.studies_a_literature / static_cast<double>(blocks.questions);
+    const double wanted = std::clamp(studies_wanted / std::max(a_question, 1e-9), 32.0, double(most_questions));
+    blocks.questions_each = static_cast<std::uint64_t>(std::ceil(wanted / 32.0)) * 32;
+    const auto together = static_cast<double>(std::min(blocks.questions, blocks.questions_each));
+    blocks.parts = static_cast<std::uint64_t>(std::fmax(1.0, std::round(a_question * together / studies_wanted)));
+    blocks.count = (blocks.questions + blocks.questions_each - 1) / blocks.questions_each * blocks.parts;
     return blocks;
 }
 
@@ -46,7 +45,7 @@ std::vector<Roster> draw_rosters(const PreparedScenario& prepared, StreamKey key
 }
 
 std::uint64_t simulate_block(const PreparedScenario& prepared, StreamKey key, std::uint32_t literature,
-                             const std::vector<Roster>& rosters, QuestionRange range, BlockScratch& scratch,
+                             const std::vector<Roster>& rosters, BlockRange range, BlockScratch& scratch,
                              std::vector<Tally>& tallies, std::map<std::string, Batch>& details) {
     std::uint64_t studies = 0;
     scratch.outcomes.resize(prepared.rules.size());
@@ -54,7 +53,8 @@ std::uint64_t simulate_block(const PreparedScenario& prepared, StreamKey key, st
         const PreparedScience& science = prepared.sciences[s];
         // Regimes may differ in how many questions the field has.
         const std::uint64_t questions = science.science.field.questions;
-        const QuestionRange its{std::min(range.first, questions), std::min(range.last, questions)};
+        const BlockRange its{std::min(range.first, questions), std::min(range.last, questions), range.part,
+                             range.parts};
         conduct(science, key, rosters[s], literature, its, scratch.conduct, scratch.block);
         gather_facts(science, scratch.block, scratch.count);
         studies += scratch.block.studies.claim.size();

@@ -13,12 +13,13 @@ namespace lacuna {
 
 /// How a scenario's literatures are cut into blocks, by the scenario alone.
 struct Blocks {
-    std::uint64_t questions;          // in a literature
-    std::uint64_t questions_a_block;  // a multiple of 32: the groups of the random kernels
-    std::uint64_t count;              // blocks in a literature
-    double studies_a_literature;      // an upper estimate
+    std::uint64_t questions;        // in a literature
+    std::uint64_t questions_each;   // a multiple of 32: the groups of the random kernels
+    std::uint64_t parts;            // blocks that share these questions, each with a part of their lines
+    std::uint64_t count;            // blocks in a literature
+    double studies_a_literature;    // expected, of the science with the most
 
-    QuestionRange range(std::uint64_t block) const;
+    BlockRange range(std::uint64_t block) const;
 };
 Blocks cut_into_blocks(const Scenario& scenario);
 
@@ -37,7 +38,7 @@ std::vector<Roster> draw_rosters(const PreparedScenario& prepared, StreamKey key
 /// Simulates `range` of `literature` under all regimes: adds to tallies[regime], appends rows to
 /// `details` (by table name; empty map: none wanted), and returns the number of studies conducted.
 std::uint64_t simulate_block(const PreparedScenario& prepared, StreamKey key, std::uint32_t literature,
-                             const std::vector<Roster>& rosters, QuestionRange range, BlockScratch& scratch,
+                             const std::vector<Roster>& rosters, BlockRange range, BlockScratch& scratch,
                              std::vector<Tally>& tallies, std::map<std::string, Batch>& details);
 
 }  // namespace lacuna

@@ -43,7 +43,7 @@ void fill_two_effects(const PreparedScience& science, StreamKey key, Questions& 
     for (std::size_t q = 0; q < count; ++q) out[q] = effect[real[q]];
 }
 
-void draw_questions(const PreparedScience& science, StreamKey key, std::uint32_t literature, QuestionRange range,
+void draw_questions(const PreparedScience& science, StreamKey key, std::uint32_t literature, BlockRange range,
                     ConductScratch& scratch, Questions& questions) {
     const Field& field = science.science.field;
     const std::size_t count = range.last - range.first;
@@ -69,30 +69,33 @@ void draw_questions(const PreparedScience& science, StreamKey key, std::uint32_t
     }
 }
 
-void place_lines(const PreparedScience& science, const Roster& roster, QuestionRange range, ConductScratch& scratch,
+void place_lines(const PreparedScience& science, const Roster& roster, BlockRange range, ConductScratch& scratch,
                  Lines& lines) {
     const std::uint64_t questions = science.science.field.questions;
-    lines.first = first_line(range.first, questions, roster.lines);
-    const std::size_t count = first_line(range.last, questions, roster.lines) - lines.first;
+    const std::uint64_t begin = first_line(range.first, questions, roster.lines);
+    const std::uint64_t all = first_line(range.last, questions, roster.lines) - begin;
+    lines.first = begin + first_line(range.part, range.parts, all);
+    const std::uint64_t last = begin + first_line(range.part + 1, range.parts, all);
+    const std::size_t count = last - lines.first;
     lines.question.resize(count);
-    lines.one_each = roster.lines == questions;
+    lines.one_each = roster.lines == questions && range.parts == 1;
     std::size_t l = 0;
     for (std::uint64_t q = range.first; q < range.last && !lines.one_each; ++q) {
-        const std::size_t end = first_line(q + 1, questions, roster.lines) - lines.first;
-        while (l < end) lines.question[l++] = static_cast<std::uint32_t>(q - range.first);
+        const std::uint64_t end = std::min(last, first_line(q + 1, questions, roster.lines));
+        while (lines.first + l < end) lines.question[l++] = static_cast<std::uint32_t>(q - range.first);
     }
     for (; l < count; ++l) lines.question[l] = static_cast<std::uint32_t>(l);
     lines.lab.clear();
     lines.kind.clear();
     if (!roster.order || count == 0) return;
     roster.order->images(lines.first, count, scratch.places);
-    lines.lab.resize(count);
-    for (std::size_t i = 0; i < count; ++i) {
-        lines.lab[i] = static_cast<std::uint32_t>(roster.lab_of_place(scratch.places[i]));
+    if (science.labs_are_stored) {
+        lines.lab.resize(count);
+        for (std::size_t i = 0; i < count; ++i) lines.lab[i] = roster.lab_of_place(scratch.places[i]);
     }
-    if (roster.kind.empty()) return;
+    if (science.science.labs.size() == 1) return;
     lines.kind.resize(count);
-    for (std::size_t i = 0; i < count; ++i) lines.kind[i] = roster.kind[lines.lab[i]];
+    for (std::size_t i = 0; i < count; ++i) lines.kind[i] = roster.kind_of_place(scratch.places[i]);
 }
 
 const LineRule& rule_of(const PreparedScience& science, const Lines& lines, std::size_t line) {
@@ -240,8 +243,10 @@ bool goes_on(const LineRule& rule, std::uint32_t studies, std::uint32_t findings
 }
 
 void conduct(const PreparedScience& science, StreamKey key, const Roster& roster, std::uint32_t literature,
-             QuestionRange range, ConductScratch& scratch, Conducted& block) {
+             BlockRange range, ConductScratch& scratch, Conducted& block) {
     block.literature = literature;
+    block.part = range.part;
+    block.parts = range.parts;
     draw_questions(science, key, literature, range, scratch, block.questions);
     place_lines(science, roster, range, scratch, block.lines);
     run_studies(science, key, scratch, block);

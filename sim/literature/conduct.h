@@ -11,9 +11,10 @@
 
 namespace lacuna {
 
-/// Questions first .. last - 1 of a literature.
-struct QuestionRange {
+/// Questions first .. last - 1 of a literature; of their lines the part `part` of `parts` equal ones.
+struct BlockRange {
     std::uint64_t first, last;
+    std::uint64_t part = 0, parts = 1;
 };
 
 /// Scratch columns, reused from block to block.
@@ -26,10 +27,10 @@ struct ConductScratch {
     std::vector<std::uint8_t> kinds;
 };
 
-/// Fills `block` with the questions of `range`, the lines that work on them, and their studies. A pure
+/// Fills `block` with the questions of `range`, its part of their lines, and their studies. A pure
 /// function of its arguments (scratch apart).
 void conduct(const PreparedScience& science, StreamKey key, const Roster& roster, std::uint32_t literature,
-             QuestionRange range, ConductScratch& scratch, Conducted& block);
+             BlockRange range, ConductScratch& scratch, Conducted& block);
 
 /// First line of question `question`: lines spread evenly over questions.
 std::uint64_t first_line(std::uint64_t question, std::uint64_t questions, std::uint64_t lines);

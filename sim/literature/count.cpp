@@ -32,9 +32,9 @@ void count_questions(const PreparedRules& rules, const Conducted& block, const O
         its.findings[outcome.status[s]] += finding[block.studies.claim[s]];
     }
     for (std::size_t q = 0; q < questions; ++q) {
-        const bool real = block.questions.truth[q] != static_cast<std::uint8_t>(Truth::null);
-        tally.add_question(real, scratch.questions[q]);
+        scratch.questions[q].real = block.questions.truth[q] != static_cast<std::uint8_t>(Truth::null);
     }
+    tally.add_questions(block.questions.first, block.parts, scratch.questions);
 }
 
 }  // namespace

@@ -46,15 +46,12 @@ void add_labs(const PreparedScenario& prepared, std::size_t science, const Roste
     const std::vector<LabKind>& kinds = prepared.sciences[science].science.labs;
     std::vector<std::size_t> code;  // of each kind among the names of all sciences
     for (const LabKind& kind : kinds) code.push_back(prepared.kind_code(kind.name));
-    const auto lines = [&](std::size_t i) {
-        return roster.first.empty() ? roster.lines_each : roster.first[i + 1] - roster.first[i];
-    };
     Filler(batch, prepared.sciences[science].science.field.labs)
         .next([&](std::size_t) { return science; })
         .next([&](std::size_t) { return block.literature; })
         .next([&](std::size_t i) { return i; })
-        .next([&](std::size_t i) { return code[roster.kind.empty() ? 0 : roster.kind[i]]; })
-        .next(lines);
+        .next([&](std::size_t i) { return code[roster.kind[i]]; })
+        .next([&](std::size_t i) { return roster.runs[i]; });
 }
 
 void add_manuscripts(const PreparedScenario& prepared, std::size_t regime, const Conducted& block,
@@ -148,8 +145,8 @@ void add_studies(const PreparedScenario& prepared, std::size_t science, const Co
 void add_details(const PreparedScenario& prepared, std::size_t science, const Roster& roster,
                  const Conducted& block, const std::vector<Outcome>& outcomes,
                  std::map<std::string, Batch>& details) {
-    add_questions(science, block, details.at("questions"));
-    if (block.questions.first == 0) add_labs(prepared, science, roster, block, details.at("labs"));
+    if (block.part == 0) add_questions(science, block, details.at("questions"));
+    if (block.part == 0 && block.questions.first == 0) add_labs(prepared, science, roster, block, details.at("labs"));
     for (std::size_t r = 0; r < outcomes.size(); ++r) {
         if (prepared.groups.science_of[r] == science) {
             add_manuscripts(prepared, r, block, outcomes[r], details.at("manuscripts"));

@@ -3,6 +3,11 @@
 #include <algorithm>
 #include <cmath>
 
+#include <fmt/format.h>
+
+#include "sim/base/fault.h"
+#include "sim/stats/student_t.h"
+
 namespace lacuna {
 
 namespace {
@@ -14,28 +19,52 @@ std::vector<Cut> as_cuts(const Cuts& cuts) {
     return all;
 }
 
-/// The power of 2 next to the larger of: a large effect of the field, the largest standard error.
+/// The largest absolute value of a distribution but for a chance of about 1e-16.
+double farthest(const Distribution& distribution) {
+    return std::fmax(std::fabs(quantile(distribution, 0x1p-53)), std::fabs(quantile(distribution, 1.0 - 0x1p-53)));
+}
+
+/// The finest scale on which no effect and no estimate is cut off: their farthest values are 2^21 of it or
+/// less. An estimate is (effect + deviation + Z / m) / S with S the sample's standard deviation over the
+/// true one; chances below 1e-16 are left out of each, and 1 / S is at most about Student's quantile.
 EffectScale scale_of(const Science& science, const TestTable& table) {
-    double largest = std::fabs(quantile(science.field.null_effect, 0.999));
-    for (const double p : {0.001, 0.5, 0.999})
-        largest = std::fmax(largest, std::fabs(quantile(science.field.effect, p)));
-    for (const double noncentrality : table.noncentrality) largest = std::fmax(largest, 1.0 / noncentrality);
-    return {std::exp2(std::ceil(std::log2(largest)))};
+    const Field& field = science.field;
+    const double normal = t_critical(infinity, 1e-16);
+    const double m = *std::min_element(table.noncentrality.begin(), table.noncentrality.end());
+    const double df = *std::min_element(table.df.begin(), table.df.end());
+    const double effect = std::fmax(farthest(field.effect), farthest(field.null_effect));
+    const double numerator = effect + normal * (field.heterogeneity + 1.0 / m);
+    const double most = numerator * t_critical(df, 1e-16);
+    return {std::exp2(std::ceil(std::log2(most)) - 21.0)};
+}
+
+/// Sums are good to 2^-14 or better of the effects only if a typical effect is that many units.
+void refuse_wide_range(const Field& field, EffectScale scale) {
+    double typical = std::fabs(mean(field.effect));
+    for (const double p : {0.25, 0.75}) typical = std::fmax(typical, std::fabs(quantile(field.effect, p)));
+    if (typical == 0.0 || typical >= 0x1p14 * scale.unit()) return;
+    Fault fault;
+    fault.key = "field.effect";
+    fault.message = fmt::format("typical effects of {:.3g} would be lost in sums that must hold values of up to {:.3g}",
+                                typical, scale.unit() * most_units);
+    fault.remedy = "bound the effects with min and max, or lower their spread or the heterogeneity";
+    throw InputError(std::move(fault));
 }
 
 }  // namespace
 
-PreparedScience::PreparedScience(const Science& its, const Cuts& cuts, bool lines_are_stored)
+PreparedScience::PreparedScience(const Science& its, const Cuts& cuts, bool labs_stored)
     : science(its),
       table(test_table(its, as_cuts(cuts))),
       effect(its.field.effect),
       null_effect(its.field.null_effect),
-      who_matters(its.labs.size() > 1 || lines_are_stored) {
+      labs_are_stored(labs_stored) {
     for (const LabKind& kind : its.labs) {
         lab_lines.emplace_back(kind.lines);
         longest_line = std::max(longest_line, kind.studies.longest());
     }
     scale = scale_of(its, table);
+    refuse_wide_range(its.field, scale);
     for (std::size_t c = 0; c < table.cut_critical.size(); ++c) {
         (c < cuts.two_sided.size() ? cuts_two : cuts_one).push_back(c);
     }

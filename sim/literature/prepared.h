@@ -20,9 +20,12 @@ struct PreparedScience {
     std::vector<std::size_t> cuts_two, cuts_one;  // in table.cut_critical, by sidedness
     EffectScale scale;                            // of effects and estimates
     std::uint32_t longest_line = 0;               // studies, over the kinds
-    bool who_matters;  // whether it must be known which lab runs a line: several kinds, or stored lines
+    bool labs_are_stored;               // so that it must be known which lab runs a line
 
-    PreparedScience(const Science& its, const Cuts& cuts, bool lines_are_stored);
+    /// Whether it must be known which kind of lab runs a line, or even which lab.
+    bool who_matters() const { return labs_are_stored || science.labs.size() > 1; }
+
+    PreparedScience(const Science& its, const Cuts& cuts, bool labs_stored);
 };
 
 /// A scenario, ready to run: its sciences, and each regime's rules.

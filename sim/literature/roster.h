@@ -12,15 +12,22 @@
 namespace lacuna {
 
 /// Lines are numbered by question: line l works on question floor(l * questions / lines), so lines
-/// spread evenly over questions. Which lab runs a line is a random permutation of all labs' lines.
+/// spread evenly over questions. Which lab runs a line is a random permutation of all labs' lines: line
+/// l has place order(l), and places belong to the labs of the first kind, then of the second, and so on.
+/// Where labs are not stored only the kinds' totals are kept, so that memory does not grow with labs.
 struct Roster {
-    std::uint64_t lines = 0;           // of all labs
-    std::vector<std::uint8_t> kind;    // per lab; empty where there is one kind
-    std::vector<std::uint64_t> first;  // per lab, and the end: its places before the permutation
-    std::uint64_t lines_each = 0;      // where every lab has as many, `first` is empty
-    std::optional<Permutation> order;  // of lines over places; none where nobody asks who
+    std::uint64_t lines = 0;                // of all labs
+    std::vector<std::uint64_t> kind_first;  // per kind, and the end: its places
+    std::optional<Permutation> order;       // of lines over places; none where nobody asks who
 
-    std::uint64_t lab_of_place(std::uint64_t place) const;
+    // Only where labs are stored.
+    std::vector<std::uint8_t> kind;    // per lab
+    std::vector<std::uint64_t> runs;   // per lab: its lines
+    std::vector<std::uint32_t> lab;    // labs, those of the first kind first
+    std::vector<std::uint64_t> first;  // place of the first line of lab[i], and the end
+
+    std::uint8_t kind_of_place(std::uint64_t place) const;
+    std::uint32_t lab_of_place(std::uint64_t place) const;  // where labs are stored
 };
 
 /// Draws the labs of `literature`. Throws InputError when they run more lines than entity_limit.

@@ -1,5 +1,5 @@
 // The columns of one block of a literature: what is true, what was done, and what is reported are
-// three types. A block holds a range of questions with every line that works on them.
+// three types. A block holds a range of questions with the lines that work on them.
 #pragma once
 
 #include <cstdint>
@@ -43,6 +43,8 @@ struct Studies {
 /// One block of conducted science.
 struct Conducted {
     std::uint32_t literature = 0;
+    // A block holds all lines of its questions, or one part of them when they are too many.
+    std::uint64_t part = 0, parts = 1;
     Questions questions;
     Lines lines;
     Studies studies;

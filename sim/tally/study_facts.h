@@ -22,7 +22,7 @@ double lower_edge(std::size_t bin);
 
 /// Sums of effects and estimates are kept in whole units of scale * 2^-30, so that they are exact and do
 /// not depend on any order: of studies, blocks, threads, or of how rules divide studies among statuses.
-/// Values beyond 2^21 scales (which takes a draw far beyond any seen) count as that.
+/// Values beyond 2^21 scales count as that: a scale is chosen so that none is drawn.
 struct EffectScale {
     double scale = 1.0;
     double unit() const { return scale * 0x1p-30; }

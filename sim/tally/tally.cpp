@@ -4,6 +4,8 @@
 #include <cmath>
 #include <limits>
 
+#include "sim/base/fault.h"
+
 namespace lacuna {
 
 namespace {
@@ -31,6 +33,7 @@ void Tally::clear() {
     std::fill(ratios_.begin(), ratios_.end(), 0u);
     std::fill_n(&manuscripts_[0][0][0], statuses * 6, 0u);
     std::fill_n(&questions_[0][0][0], scopes * 6, 0u);
+    open_.clear();
     manuscripts_from_studies_ = questions_from_studies_ = false;
 }
 
@@ -95,17 +98,38 @@ void Tally::sum_effects(const StudyFacts& facts, const std::uint8_t* status) {
     }
 }
 
-void Tally::add_question(bool real, const QuestionCount& count) {
+void Tally::add_question(const QuestionCount& count) {
     std::uint32_t studies = 0;
     std::uint32_t findings = 0;
     for (std::size_t scope = scopes; scope-- > 0;) {  // the narrowest first: each holds the one before
         studies += count.studies[scope];
         findings += count.findings[scope];
-        auto& standings = questions_[scope][real];
+        auto& standings = questions_[scope][count.real];
         standings[static_cast<std::size_t>(Standing::studied)] += studies > 0;
         standings[static_cast<std::size_t>(Standing::any_finding)] += findings > 0;
         standings[static_cast<std::size_t>(Standing::majority)] += 2 * findings > studies;
     }
+}
+
+void Tally::add_questions(std::uint64_t first, std::uint64_t parts, const std::vector<QuestionCount>& counts) {
+    if (parts > 1) return join(first, parts, 1, counts);
+    for (const QuestionCount& count : counts) add_question(count);
+}
+
+void Tally::join(std::uint64_t first, std::uint64_t parts, std::uint64_t parts_given,
+                 const std::vector<QuestionCount>& counts) {
+    auto [at, fresh] = open_.try_emplace(first, OpenQuestions{parts, parts, counts});
+    OpenQuestions& open = at->second;
+    for (std::size_t q = 0; !fresh && q < counts.size(); ++q) {
+        for (std::size_t status = 0; status < statuses; ++status) {
+            open.counts[q].studies[status] += counts[q].studies[status];
+            open.counts[q].findings[status] += counts[q].findings[status];
+        }
+    }
+    open.parts_missing -= parts_given;
+    if (open.parts_missing > 0) return;
+    for (const QuestionCount& count : open.counts) add_question(count);
+    open_.erase(at);
 }
 
 void Tally::count_studies_as_manuscripts() { manuscripts_from_studies_ = true; }
@@ -117,6 +141,7 @@ void Tally::merge(const Tally& part) {
     for (std::size_t i = 0; i < ratios_.size(); ++i) ratios_[i] += part.ratios_[i];
     for (std::size_t i = 0; i < statuses * 6; ++i) (&manuscripts_[0][0][0])[i] += (&part.manuscripts_[0][0][0])[i];
     for (std::size_t i = 0; i < scopes * 6; ++i) (&questions_[0][0][0])[i] += (&part.questions_[0][0][0])[i];
+    for (const auto& [first, open] : part.open_) join(first, open.parts, open.parts - open.parts_missing, open.counts);
     manuscripts_from_studies_ |= part.manuscripts_from_studies_;
     questions_from_studies_ |= part.questions_from_studies_;
 }
@@ -246,6 +271,7 @@ void Tally::put_medians(const Layout& layout, std::vector<double>& row) const {
 }
 
 std::vector<double> Tally::row() const {
+    if (!open_.empty()) throw Defect("Tally::row: parts of a literature's questions are missing");
     const Layout layout(kinds_);
     std::vector<double> row(layout.size(), 0.0);
     put_studies(layout, row);

@@ -2,6 +2,7 @@
 #pragma once
 
 #include <cstdint>
+#include <map>
 #include <vector>
 
 #include "sim/tally/layout.h"
@@ -11,6 +12,7 @@ namespace lacuna {
 
 /// A question's studies and findings, by Status.
 struct QuestionCount {
+    bool real = false;  // and not negligible
     std::uint32_t studies[3] = {};
     std::uint32_t findings[3] = {};
 };
@@ -29,11 +31,12 @@ public:
         ++manuscripts_[static_cast<std::size_t>(status)][real][static_cast<std::size_t>(manuscript_class)];
     }
 
-    /// One question with all its studies.
-    void add_question(bool real, const QuestionCount& count);
+    /// Questions first, first + 1, ... with all their studies; or, where their studies come in `parts`,
+    /// with those of one part: they count once all parts are in, added here or merged.
+    void add_questions(std::uint64_t first, std::uint64_t parts, const std::vector<QuestionCount>& counts);
 
     /// Takes manuscripts and questions from the study counts added so far, instead of add_manuscript
-    /// and add_question: right where every manuscript is one study and every question has at most one.
+    /// and add_questions: right where every manuscript is one study and every question has at most one.
     void count_studies_as_manuscripts();
     void count_studies_as_questions();
 
@@ -54,6 +57,14 @@ private:
     };
     static constexpr std::size_t lanes = 4;  // copies of the scratch sums, so that additions overlap
 
+    /// Questions of which some parts are still to come.
+    struct OpenQuestions {
+        std::uint64_t parts, parts_missing;
+        std::vector<QuestionCount> counts;
+    };
+    void add_question(const QuestionCount& count);
+    void join(std::uint64_t first, std::uint64_t parts, std::uint64_t parts_given,
+              const std::vector<QuestionCount>& counts);
     void count_studies(const StudyFacts& facts, const std::uint8_t* status);
     void sum_effects(const StudyFacts& facts, const std::uint8_t* status);
     static void add(const Cell& from, Cell& to);
@@ -74,6 +85,7 @@ private:
     std::vector<std::uint32_t> ratios_;        // [status][finding][bin]
     std::uint64_t manuscripts_[3][2][3] = {};  // [status][real][class]
     std::uint64_t questions_[3][2][3] = {};    // [scope][real][standing]
+    std::map<std::uint64_t, OpenQuestions> open_;  // by their first question
     bool manuscripts_from_studies_ = false, questions_from_studies_ = false;
 };
 

@@ -3,6 +3,7 @@
 #include <cmath>
 
 #include "sim/random/kernels.h"
+#include "sim/base/fault.h"
 #include "sim/tally/tally.h"
 
 using namespace lacuna;
@@ -171,13 +172,36 @@ TEST_CASE("A majority is more than half of a question's studies, scope by scope"
     q.findings[2] = 1;
     q.studies[0] = 1;  // unwritten finding
     q.findings[0] = 1;
-    tally.add_question(true, q);
+    q.real = true;
+    tally.add_questions(0, 1, {q});
     const auto row = tally.row();
     const Layout layout(1);
     CHECK(row[layout.questions(Scope::published, true, Standing::any_finding)] == 1);
     CHECK(row[layout.questions(Scope::published, true, Standing::majority)] == 0);
     CHECK(row[layout.questions(Scope::conducted, true, Standing::majority)] == 1);
     CHECK(row[layout.questions(Scope::conducted, false, Standing::studied)] == 0);
+}
+
+TEST_CASE("Questions whose studies come in parts count once all are in, in any order of merging", "[tally]") {
+    QuestionCount some, rest, none;
+    some.real = rest.real = none.real = true;
+    some.studies[2] = 2;
+    some.findings[2] = 2;
+    rest.studies[2] = 3;  // 2 of 5 find: no majority, though the first part has one
+    const auto tally_of = [&](std::vector<const QuestionCount*> parts) {
+        Tally tally(1, Findings::either, scale);
+        for (const QuestionCount* part : parts) tally.add_questions(32, 3, {*part});
+        return tally;
+    };
+    const Layout layout(1);
+    Tally a = tally_of({&some});
+    CHECK_THROWS_AS(a.row(), Defect);
+    a.merge(tally_of({&none, &rest}));
+    CHECK(a.row()[layout.questions(Scope::published, true, Standing::any_finding)] == 1);
+    CHECK(a.row()[layout.questions(Scope::published, true, Standing::majority)] == 0);
+    Tally b = tally_of({&rest, &some, &none});
+    CHECK(b.row()[layout.questions(Scope::published, true, Standing::majority)] == 0);
+    CHECK(b.row()[layout.questions(Scope::published, true, Standing::studied)] == 1);
 }
 
 TEST_CASE("Sums do not depend on how studies are divided among statuses, or on their order", "[tally]") {

@@ -1,8 +1,9 @@
+#include "sim/literature/expected_studies.h"
+
 #include <algorithm>
 #include <cmath>
 
 #include "sim/design/design.h"
-#include "sim/engine/run.h"
 #include "sim/stats/distribution.h"
 
 namespace lacuna {
