@@ -1,6 +1,11 @@
 #include "analysis/cli/design_preview.h"
 
+#include <algorithm>
+#include <cmath>
+
+#include "sim/config/choices.h"
 #include "sim/design/design.h"
+#include "sim/design/plan_table.h"
 
 namespace lacuna {
 
@@ -14,23 +19,51 @@ std::uint32_t median_size(const IntegerDistribution& sizes) {
     return static_cast<std::uint32_t>(sizes.first + static_cast<long>(i));
 }
 
+struct Sizes {
+    std::uint32_t median, low, high;
+};
+
+/// Of studies planned for each question: at the planning effect of a question of mean effect, and the range
+/// over the middle 99.8 % of effects.
+Sizes planned_sizes(const Regime& regime, const SizePlan& size) {
+    const PlanTable plan(regime.science.design, size.power, size.most);
+    const Distribution& effects = regime.science.field.effect;
+    const auto n = [&](double effect) { return plan.first() + plan.position(size.effect.optimism * effect); };
+    const auto [low, high] = std::minmax({n(quantile(effects, 0.001)), n(quantile(effects, 0.999)), n(mean(effects))});
+    return {n(mean(effects)), low, high};
+}
+
+Sizes sizes_of(const Regime& regime, const SizePlan& size) {
+    if (size.kind == SizePlan::Kind::power && size.effect.is_true) return planned_sizes(regime, size);
+    const IntegerDistribution sizes = size_distribution(regime.science.design, size);
+    const auto low = static_cast<std::uint32_t>(sizes.first);
+    return {median_size(sizes), low, static_cast<std::uint32_t>(low + sizes.chance.size() - 1)};
+}
+
+double effect_shown(const Regime& regime, const SizePlan& size) {
+    const bool planned = size.kind == SizePlan::Kind::power || size.kind == SizePlan::Kind::exact_power;
+    return planned && !size.effect.is_true ? size.effect.value : mean(regime.science.field.effect);
+}
+
 DesignPreview preview_design(const Regime& regime, const LabKind& lab) {
     const Design& design = regime.science.design;
-    const IntegerDistribution sizes = size_distribution(design, lab.size);
-    const TestPlan plan = describe(design, median_size(sizes));
-    const auto low = static_cast<std::uint32_t>(sizes.first);
-    const auto high = static_cast<std::uint32_t>(low + sizes.chance.size() - 1);
+    const Sizes sizes = sizes_of(regime, lab.size);
+    TestPlan plan = describe(design, sizes.median);
     DesignPreview preview;
     preview.lab = lab.name;
     preview.regime = regime.name;
-    preview.test = design.test == Test::two_means ? "two-means" : "known-variance";
+    preview.test = word_for(design.test);
     preview.alpha = design.alpha;
     preview.sides = design.sides;
     preview.n1 = plan.size.n1;
     preview.n2 = plan.size.n2;
-    preview.n1_low = low;
-    preview.n1_high = high;
-    preview.effect = lab.size.kind == SizePlan::Kind::power ? lab.size.effect : mean(regime.science.field.effect);
+    preview.n1_low = sizes.low;
+    preview.n1_high = sizes.high;
+    preview.effect = effect_shown(regime, lab.size);
+    if (lab.size.kind == SizePlan::Kind::exact_power) {
+        const double planned = lab.size.effect.is_true ? lab.size.effect.optimism * preview.effect : preview.effect;
+        plan.noncentrality = noncentrality_of_power(design, lab.size.n, lab.size.power) / std::fabs(planned);
+    }
     preview.power = power(design, plan, preview.effect);
     preview.power_predicted = power_predicted(design, plan, preview.effect);
     preview.critical = plan.critical;

@@ -15,8 +15,20 @@ template <class E>
 inline constexpr std::array<std::pair<std::string_view, E>, 0> choices{};
 
 template <>
-inline constexpr std::array<std::pair<std::string_view, Test>, 2> choices<Test>{
-    {{"two-means", Test::two_means}, {"known-variance", Test::known_variance}}};
+inline constexpr std::array<std::pair<std::string_view, Test>, 7> choices<Test>{
+    {{"two-means", Test::two_means},
+     {"paired-means", Test::paired_means},
+     {"one-mean", Test::one_mean},
+     {"correlation", Test::correlation},
+     {"two-proportions", Test::two_proportions},
+     {"known-variance", Test::known_variance},
+     {"several-means", Test::several_means}}};
+template <>
+inline constexpr std::array<std::pair<std::string_view, Looks::Boundary>, 4> choices<Looks::Boundary>{
+    {{"pocock", Looks::Boundary::pocock},
+     {"obrien-fleming", Looks::Boundary::obrien_fleming},
+     {"spending-pocock", Looks::Boundary::spending_pocock},
+     {"spending-obrien-fleming", Looks::Boundary::spending_obrien_fleming}}};
 template <>
 inline constexpr std::array<std::pair<std::string_view, Findings>, 2> choices<Findings>{
     {{"either", Findings::either}, {"predicted", Findings::predicted}}};
@@ -24,10 +36,11 @@ template <>
 inline constexpr std::array<std::pair<std::string_view, EffectEstimate>, 2> choices<EffectEstimate>{
     {{"d", EffectEstimate::d}, {"g", EffectEstimate::g}}};
 template <>
-inline constexpr std::array<std::pair<std::string_view, SizePlan::Kind>, 3> choices<SizePlan::Kind>{
+inline constexpr std::array<std::pair<std::string_view, SizePlan::Kind>, 4> choices<SizePlan::Kind>{
     {{"fixed", SizePlan::Kind::fixed},
      {"distribution", SizePlan::Kind::distribution},
-     {"power", SizePlan::Kind::power}}};
+     {"power", SizePlan::Kind::power},
+     {"exact-power", SizePlan::Kind::exact_power}}};
 template <>
 inline constexpr std::array<std::pair<std::string_view, LineRule::Kind>, 3> choices<LineRule::Kind>{
     {{"fixed", LineRule::Kind::fixed},

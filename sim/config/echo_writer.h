@@ -22,6 +22,12 @@ public:
     void bound(const char* key, double& x, const About&) {
         if (std::isfinite(x)) object_[key] = x;
     }
+    void number_or_word(const char* key, double& x, bool& is_word, const char* word, const About&) {
+        if (is_word)
+            object_[key] = word;
+        else
+            object_[key] = x;
+    }
     void numbers(const char* key, std::vector<double>& x, const Range&, const About&) { object_[key] = x; }
     void flag(const char* key, bool& x, const About&) { object_[key] = x; }
     void text(const char* key, std::string& x, const About&) {

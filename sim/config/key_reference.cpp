@@ -25,6 +25,9 @@ public:
             about);
     }
     void bound(const char* key, double&, const About& about) { add(key, "number", "", about); }
+    void number_or_word(const char* key, double& x, bool&, const char* word, const About& about) {
+        add(key, fmt::format("number, \"{}\"", word), fmt::format("{}", x), about);
+    }
     void numbers(const char* key, std::vector<double>&, const Range& range, const About& about) {
         add(key, "numbers, " + to_string(range), "[]", about);
     }

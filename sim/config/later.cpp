@@ -2,29 +2,16 @@
 
 #include <algorithm>
 #include <array>
-#include <utility>
 
 namespace lacuna {
 
 namespace {
 
-constexpr std::array<std::string_view, 7> later_keys{"sweep",
+constexpr std::array<std::string_view, 5> later_keys{"sweep",
                                                      "registry",
                                                      "run.precision",
                                                      "lab.practices",
-                                                     "journal.registered_reports",
-                                                     "design.size.optimism",
-                                                     "lab.size.optimism"};
-
-constexpr std::array<std::pair<std::string_view, std::string_view>, 7> later_words{{
-    {"design.test", "paired-means"},
-    {"design.test", "one-mean"},
-    {"design.test", "correlation"},
-    {"design.test", "two-proportions"},
-    {"design.test", "several-means"},
-    {"design.size.effect", "true"},
-    {"lab.size.effect", "true"},
-}};
+                                                     "journal.registered_reports"};
 
 /// The key without positions: lab.3.practices -> lab.practices.
 std::string without_positions(std::string_view key) {
@@ -44,12 +31,6 @@ std::string without_positions(std::string_view key) {
 
 bool is_for_later(std::string_view key) {
     return std::find(later_keys.begin(), later_keys.end(), without_positions(key)) != later_keys.end();
-}
-
-bool is_for_later(std::string_view key, std::string_view word) {
-    const std::string plain = without_positions(key);
-    return std::any_of(later_words.begin(), later_words.end(),
-                       [&](const auto& pair) { return pair.first == plain && pair.second == word; });
 }
 
 }  // namespace lacuna

@@ -10,7 +10,6 @@ namespace lacuna {
 /// True for a key (`run.precision`, `lab.3.practices`) or a key with its word (`design.test = "correlation"`)
 /// that belongs to the config but not to this version.
 bool is_for_later(std::string_view key);
-bool is_for_later(std::string_view key, std::string_view word);
 
 /// What the fault says and advises.
 inline constexpr const char* for_later_message = "is not simulated by this version";

@@ -6,6 +6,9 @@
 #include <cmath>
 #include <set>
 
+#include "sim/config/size_rules.h"
+#include "sim/config/support.h"
+
 namespace lacuna {
 
 namespace {
@@ -53,6 +56,22 @@ private:
     std::vector<Fault> faults_;
 };
 
+/// Effects that the design's scale knows, and that sizes can be planned for.
+void demand_possible_effects(const Science& science, Limits& limits) {
+    const Test test = science.design.test;
+    const auto possible = [&](const Distribution& effect) {
+        return can_be_effect(test, lowest_draw(effect)) && can_be_effect(test, highest_draw(effect));
+    };
+    limits.demand(possible(science.field.effect), "field.effect", effect_limits(test), "bound it with min and max");
+    limits.demand(possible(science.field.null_effect), "field.null_effect", effect_limits(test),
+                  "bound it with min and max");
+    const auto follows_truth = [](const LabKind& lab) { return lab.size.for_each_question() && lab.size.effect.is_true; };
+    const bool never = lowest_draw(science.field.effect) == 0.0 && highest_draw(science.field.effect) == 0.0;
+    limits.demand(!never || std::none_of(science.labs.begin(), science.labs.end(), follows_truth), "field.effect",
+                  "is 0, and sizes are planned for true effects: no n gives power for no effect",
+                  "plan for a number instead of \"true\"");
+}
+
 }  // namespace
 
 std::vector<Fault> limit_faults(const Document& document, const ConfigNode& root) {
@@ -62,6 +81,7 @@ std::vector<Fault> limit_faults(const Document& document, const ConfigNode& root
     const double studies = labs * studies_per_lab(document.science.labs);
     const bool rows_kept = document.store.detail != Detail::literatures;
     Limits limits(root);
+    demand_possible_effects(document.science, limits);
     limits.demand(
         studies < most_studies, "field.labs",
         fmt::format("one literature would hold up to {:.3g} studies; the most is {:.3g}", studies, most_studies),

@@ -74,14 +74,17 @@ bool Reader::in_range(const char* key, const ConfigNode& node, const Range& rang
 void Reader::number(const char* key, double& out, const Range& range, const About& about) {
     const ConfigEntry* entry = take(key, about);
     if (!entry) return;
-    if (!entry->value.is_number()) {
-        const bool for_later =
-            entry->value.kind == ConfigNode::Kind::string && is_for_later(full(key), entry->value.text);
-        if (!for_later) return wrong_type(key, entry->value, "a number");
-        return report(key, entry->value.place, fmt::format("{} {}", quoted(entry->value), for_later_message),
-                      "give a number");
-    }
+    if (!entry->value.is_number()) return wrong_type(key, entry->value, "a number");
     if (in_range(key, entry->value, range)) out = entry->value.number();
+}
+
+void Reader::number_or_word(const char* key, double& out, bool& is_word, const char* word, const About& about) {
+    const ConfigEntry* entry = take(key, about);
+    if (!entry) return;
+    is_word = entry->value.kind == ConfigNode::Kind::string && entry->value.text == word;
+    if (is_word) return;
+    if (!entry->value.is_number()) return wrong_type(key, entry->value, fmt::format("a number or \"{}\"", word));
+    if (in_range(key, entry->value, any_range)) out = entry->value.number();
 }
 
 void Reader::numbers(const char* key, std::vector<double>& out, const Range& range, const About& about) {
@@ -161,10 +164,6 @@ std::optional<std::size_t> Reader::take_choice(const char* key, const std::vecto
     }
     const auto found = std::find(words.begin(), words.end(), node.text);
     if (found != words.end()) return static_cast<std::size_t>(found - words.begin());
-    if (is_for_later(full(key), node.text)) {
-        report(key, node.place, fmt::format("{} {}", quoted(node), for_later_message), one_of(words));
-        return {};
-    }
     const std::string best = nearest(node.text, words);
     report(key, node.place, fmt::format("must be {}, is {}", one_of(words), quoted(node)),
            best.empty() ? "" : fmt::format("did you mean \"{}\"?", best));

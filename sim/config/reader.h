@@ -4,6 +4,7 @@
 // Every walker of the table of keys has these members; what they do is said here once:
 //   number, integer, numbers, flag, text, name, choice  one key with one value
 //                   (a name is a text that paths can tell from a position)
+//   number_or_word  a number, or one word that says how it comes about
 //   bound           a number that is left out where it is infinite
 //   table           a key that holds a table
 //   number_or_table a key that holds a table, or a number that `set` turns into the same values
@@ -38,6 +39,7 @@ public:
 
     void number(const char* key, double& out, const Range& range, const About& about);
     void bound(const char* key, double& out, const About& about) { number(key, out, any_range, about); }
+    void number_or_word(const char* key, double& out, bool& is_word, const char* word, const About& about);
     void numbers(const char* key, std::vector<double>& out, const Range& range, const About& about);
     void flag(const char* key, bool& out, const About& about);
     void text(const char* key, std::string& out, const About& about);

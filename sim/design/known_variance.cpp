@@ -11,6 +11,6 @@ TestPlan plan(StudySize size) {
     return {size, n, infinite, std::sqrt(n), 1.0, infinite};
 }
 
-double standard_error(StudySize size) { return 1.0 / std::sqrt(static_cast<double>(size.n1)); }
+double standard_error(const TestPlan& plan) { return 1.0 / plan.noncentrality; }
 
 }  // namespace lacuna::known_variance

@@ -13,6 +13,6 @@ inline constexpr std::uint32_t smallest_n = 1;
 TestPlan plan(StudySize size);
 
 /// 1 / sqrt(n), whatever the estimate.
-double standard_error(StudySize size);
+double standard_error(const TestPlan& plan);
 
 }  // namespace lacuna::known_variance

@@ -2,6 +2,7 @@
 
 #include "sim/base/fault.h"
 #include "sim/design/design.h"
+#include "sim/design/two_proportions.h"
 
 namespace lacuna {
 
@@ -18,7 +19,7 @@ std::string shown(double x) {
     Fault fault;
     fault.key = "size";
     fault.message = "no study of up to " + std::to_string(largest_n) + " observations" +
-                    (design.test == Test::two_means ? " per group" : "") + " reaches power " + shown(target_power) +
+                    (design.test == Test::two_means || design.test == Test::several_means ? " per group" : "") + " reaches power " + shown(target_power) +
                     " at effect " + shown(effect);
     if (design.sides == 1 && effect < 0.0) {
         fault.remedy = "a one-sided test predicts a positive effect: plan for one, or use sides = 2";
@@ -32,7 +33,7 @@ std::string shown(double x) {
     Fault fault;
     fault.key = "size";
     fault.message = "studies of n = " + std::to_string(n) + " would occur, but n must be " +
-                    std::to_string(smallest_n(design.test)) + " .. " + std::to_string(largest_n);
+                    std::to_string(smallest_n(design)) + " .. " + std::to_string(largest_n);
     fault.remedy = "bound the sizes with min and max";
     throw InputError(std::move(fault));
 }
@@ -40,10 +41,17 @@ std::string shown(double x) {
 }  // namespace
 
 std::uint32_t planned_n(const Design& design, double target_power, double effect) {
+    if (design.test == Test::two_proportions) {  // its power is not monotone in n
+        const double critical = describe(design, smallest_n(design)).critical;
+        const std::uint32_t n = two_proportions::planned_n(design.base_rate, effect, target_power, critical,
+                                                           design.sides, design.allocation);
+        if (n == 0) refuse_plan(design, target_power, effect);
+        return n;
+    }
     const auto reaches = [&](std::uint32_t n) {
         return power(design, describe(design, n), effect) >= target_power;
     };
-    std::uint32_t reaching = smallest_n(design.test);
+    std::uint32_t reaching = smallest_n(design);
     std::uint32_t lacking = reaching - 1;
     while (!reaches(reaching)) {
         // Without an effect in the tested direction power never grows with n.
@@ -66,14 +74,17 @@ IntegerDistribution size_distribution(const Design& design, const SizePlan& size
             sizes = {static_cast<long>(size.n), {1.0}};
             break;
         case SizePlan::Kind::power:
-            sizes = {static_cast<long>(planned_n(design, size.power, size.effect)), {1.0}};
+            sizes = {static_cast<long>(planned_n(design, size.power, size.effect.value)), {1.0}};
+            break;
+        case SizePlan::Kind::exact_power:
+            sizes = {static_cast<long>(size.n), {1.0}};
             break;
         case SizePlan::Kind::distribution:
             sizes = rounded(size.distribution, size.round_down);
             break;
     }
     const long last = sizes.first + static_cast<long>(sizes.chance.size()) - 1;
-    if (sizes.first < static_cast<long>(smallest_n(design.test))) refuse_size(design, sizes.first);
+    if (sizes.first < static_cast<long>(smallest_n(design))) refuse_size(design, sizes.first);
     if (last > static_cast<long>(largest_n)) refuse_size(design, last);
     return sizes;
 }

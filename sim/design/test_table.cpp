@@ -1,6 +1,11 @@
 #include "sim/design/test_table.h"
 
+#include <algorithm>
+#include <cmath>
+
 #include "sim/design/design.h"
+#include "sim/design/looks.h"
+#include "sim/stats/student_t.h"
 #include "sim/variate/alias.h"
 #include "sim/variate/gamma.h"
 
@@ -8,51 +13,154 @@ namespace lacuna {
 
 namespace {
 
-void add_row(const Design& design, const std::vector<Cut>& cuts, std::uint32_t n, TestTable& table) {
-    const TestPlan plan = describe(design, n);
-    table.n1.push_back(plan.size.n1);
-    table.n2.push_back(plan.size.n2);
-    table.participants.push_back(plan.size.n1 + plan.size.n2);
-    table.df.push_back(plan.df);
-    table.noncentrality.push_back(plan.noncentrality);
-    table.to_estimate.push_back(reported_estimate(design, plan, 1.0));
-    table.to_corrected.push_back(plan.correction / plan.noncentrality);
-    table.critical.push_back(plan.critical);
-    const bool variance_known = design.test == Test::known_variance;
-    const GammaShape shape = gamma_shape(variance_known ? 1.0 : plan.df / 2.0);
-    table.gamma_c.push_back(shape.c);
-    // Chi-squared over df is 2 gamma(df / 2) / df = (2 d / df) (1 + c x)^3.
-    table.variance_per_cube.push_back(variance_known ? 1.0 : 2.0 * shape.d / plan.df);
-    for (std::size_t c = 0; c < cuts.size(); ++c) {
-        table.cut_critical[c].push_back(critical_value(design.test, plan.df, cuts[c].p, cuts[c].sides));
+/// The chi-squared variates behind a study (see sim/design/studies.h).
+void add_variates(const Design& design, const TestPlan& plan, TestTable& table) {
+    const double n1 = plan.size.n1, n2 = plan.size.n2;
+    if (design.test == Test::known_variance || design.test == Test::two_proportions) {
+        table.variance.add(0.0, 1.0);
+    } else if (design.welch) {
+        table.variance.add(n1 - 1.0, n1 - 1.0);
+    } else {
+        table.variance.add(plan.df, plan.df);
+    }
+    if (design.welch) {
+        table.other.add(n2 - 1.0, n2 - 1.0);
+    } else if (design.test == Test::correlation) {
+        table.other.add(n1 - 1.0, 1.0);
+    } else {
+        table.other.add(design.test == Test::several_means ? design.groups - 2.0 : 0.0, 1.0);
     }
 }
 
-void add_kind(const Design& design, const std::vector<Cut>& cuts, const SizePlan& size, TestTable& table) {
+void add_row(const Design& design, const std::vector<Cut>& cuts, const TestPlan& plan, TestTable& table) {
+    table.n1.push_back(plan.size.n1);
+    table.n2.push_back(plan.size.n2);
+    table.participants.push_back(static_cast<std::uint32_t>(plan.participants));
+    table.df.push_back(plan.df);
+    table.df_effect.push_back(plan.df_effect);
+    table.noncentrality.push_back(plan.noncentrality);
+    table.to_estimate.push_back((design.estimate == EffectEstimate::g ? plan.correction : 1.0) / plan.noncentrality);
+    table.correction.push_back(plan.correction);
+    table.critical.push_back(plan.critical);
+    table.equivalence_critical.push_back(
+        design.equivalence.tested() ? equivalence_critical(design, plan) : -infinity);
+    add_variates(design, plan, table);
+    for (std::size_t c = 0; c < cuts.size(); ++c) {
+        table.cut_critical[c].push_back(critical_value(design, plan, cuts[c].p, cuts[c].sides));
+    }
+}
+
+void add_sizes(const Design& design, const std::vector<Cut>& cuts, const SizePlan& size,
+               const std::optional<LookPlans>& looks, TestTable& table) {
+    const std::uint32_t last = design.looks.count - 1;
     const IntegerDistribution sizes = size_distribution(design, size);
     const AliasTable alias = alias_table(sizes.chance);
     const auto first = static_cast<std::uint32_t>(table.n1.size());
     for (std::size_t i = 0; i < sizes.chance.size(); ++i) {
-        add_row(design, cuts, static_cast<std::uint32_t>(sizes.first + static_cast<long>(i)), table);
+        const auto n = static_cast<std::uint32_t>(sizes.first + static_cast<long>(i));
+        add_row(design, cuts, looks ? looks->plan(n, last) : describe(design, n), table);
         table.keep.push_back(alias.keep[i]);
-        table.other.push_back(std::uint64_t{first} + alias.other[i]);
+        table.other_row.push_back(std::uint64_t{first} + alias.other[i]);
     }
-    table.kinds.push_back({first, static_cast<std::uint32_t>(sizes.chance.size())});
+    table.kinds.push_back({first, static_cast<std::uint32_t>(sizes.chance.size()), {}, false});
+}
+
+/// Sizes that follow each question's effect: a row for each of them.
+void add_planned_sizes(const Design& design, const std::vector<Cut>& cuts, const SizePlan& size, TestTable& table) {
+    const auto first = static_cast<std::uint32_t>(table.n1.size());
+    const PlanTable plan(design, size.power, size.most);
+    for (std::uint32_t n = plan.first(); n <= plan.most(); ++n) {
+        add_row(design, cuts, describe(design, n), table);
+        table.keep.push_back(1.0);
+        table.other_row.push_back(table.keep.size() - 1);
+    }
+    table.kinds.push_back({first, plan.most() - plan.first() + 1, plan, false});
+}
+
+/// One size, with noise such that an effect of 1 has the power: effects are in units of the planned one.
+void add_exact_power(const Design& design, const std::vector<Cut>& cuts, const SizePlan& size, TestTable& table) {
+    const auto first = static_cast<std::uint32_t>(table.n1.size());
+    TestPlan plan = describe(design, size.n);
+    plan.noncentrality = noncentrality_of_power(design, size.n, size.power);
+    add_row(design, cuts, plan, table);
+    table.keep.push_back(1.0);
+    table.other_row.push_back(first);
+    table.kinds.push_back({first, 1, {}, true});
+}
+
+void add_curves(const Design& design, const std::vector<Cut>& cuts, TestTable& table) {
+    double least = infinity, most = 0.0;
+    for (std::size_t row = 0; row < table.df.size(); ++row) {
+        least = std::fmin(least, std::min(table.n1[row], table.n2[row]) - 1.0);
+        most = std::fmax(most, table.df[row]);
+    }
+    table.curve = CriticalCurve(design.alpha, design.sides, least, most);
+    table.equivalence_curve = CriticalCurve(design.equivalence.alpha, 1, least, most);
+    for (const Cut& cut : cuts) table.cut_curves.emplace_back(cut.p, cut.sides, least, most);
+}
+
+/// The rows of the looks before the last; the variance of every row becomes that of a look's new observations.
+void add_looks(const Design& design, const std::vector<Cut>& cuts, const LookPlans& looks, TestTable& table) {
+    const std::uint32_t last = design.looks.count - 1;
+    const std::size_t sizes = table.n1.size();
+    for (std::size_t size = 0; size < sizes; ++size) {
+        table.first_look.push_back(static_cast<std::uint32_t>(table.n1.size()));
+        for (std::uint32_t k = 0; k < last; ++k) add_row(design, cuts, looks.plan(table.n1[size], k), table);
+    }
+    table.futility.assign(table.n1.size(), -infinity);
+    ChiColumns increments;
+    const auto add = [&](std::size_t row, std::size_t before, bool is_first) {
+        const auto df = [&](const std::vector<std::uint32_t>& n) {
+            const double more = n[row] - (is_first ? 0.0 : n[before]);
+            return std::fmax(0.0, more - 1.0);
+        };
+        increments.add(df(table.n1) + df(table.n2), 1.0);
+    };
+    for (std::size_t size = 0; size < sizes; ++size) add(size, table.first_look[size] + last - 1, false);
+    for (std::size_t size = 0; size < sizes; ++size) {
+        for (std::uint32_t k = 0; k < last; ++k) {
+            const std::size_t row = table.first_look[size] + k;
+            table.futility[row] = looks.futility(k, table.df[row]);
+            add(row, row - 1, k == 0);
+        }
+    }
+    table.variance = std::move(increments);
 }
 
 }  // namespace
 
+void ChiColumns::add(double df, double divisor) {
+    if (df < 2.0) {
+        c.push_back(df == 1.0 ? -1.0 : 0.0);
+        per_cube.push_back(df == 1.0 ? 1.0 / divisor : 0.0);
+        return;
+    }
+    const GammaShape shape = gamma_shape(df / 2.0);
+    c.push_back(shape.c);
+    per_cube.push_back(2.0 * shape.d / divisor);  // chi-squared is twice a gamma(df / 2)
+}
+
 TestTable test_table(const Science& science, const std::vector<Cut>& cuts) {
     TestTable table;
     table.cut_critical.resize(cuts.size());
-    for (const LabKind& kind : science.labs) add_kind(science.design, cuts, kind.size, table);
+    const Design& design = science.design;
+    const std::optional<LookPlans> looks = design.looks.count > 1 ? std::optional<LookPlans>(design) : std::nullopt;
+    for (const LabKind& kind : science.labs) {
+        if (kind.size.kind == SizePlan::Kind::exact_power)
+            add_exact_power(design, cuts, kind.size, table);
+        else if (kind.size.for_each_question())
+            add_planned_sizes(design, cuts, kind.size, table);
+        else
+            add_sizes(design, cuts, kind.size, looks, table);
+    }
+    if (design.welch) add_curves(design, cuts, table);
+    if (looks) add_looks(design, cuts, *looks, table);
     return table;
 }
 
-double TestTable::standard_error(const Design& design, std::size_t row, double statistic) const {
-    const TestPlan plan{{n1[row], n2[row]}, static_cast<double>(participants[row]), df[row], noncentrality[row],
-                        to_corrected[row] * noncentrality[row], critical[row]};
-    return reported_standard_error(design, plan, statistic);
+TestPlan TestTable::plan(std::size_t row) const {
+    return {{n1[row], n2[row]},  static_cast<double>(participants[row]), df[row], noncentrality[row],
+            correction[row], critical[row], df_effect[row]};
 }
 
 }  // namespace lacuna

@@ -1,11 +1,16 @@
 // Everything the sampling of a study needs that depends on its size alone, one row per possible size,
-// as columns for the vector kernels. Rows of several lab kinds stand one after the other.
+// as columns for the vector kernels. Rows of several lab kinds stand one after the other; rows of interim
+// looks stand behind them all.
 #pragma once
 
 #include <cstddef>
 #include <cstdint>
+#include <optional>
 #include <vector>
 
+#include "sim/design/plan_table.h"
+#include "sim/design/test_plan.h"
+#include "sim/design/welch.h"
 #include "sim/model/scenario.h"
 
 namespace lacuna {
@@ -17,31 +22,53 @@ struct Cut {
     bool operator==(const Cut&) const = default;
 };
 
+/// Scaled chi-squared variates by Marsaglia & Tsang (sim/variate/gamma.h): per_cube (1 + c x)^3 of an accepted
+/// normal x. On one degree of freedom c is negative and the variate is x^2; on none both are 0.
+struct ChiColumns {
+    std::vector<double> c, per_cube;
+
+    /// Adds a row: a chi-squared of `df` degrees of freedom (a whole number), over `divisor`.
+    void add(double df, double divisor);
+};
+
 struct TestTable {
     // One entry per row.
     std::vector<std::uint32_t> n1, n2;      // n2 = 0 for designs with one group
     std::vector<std::uint32_t> participants;
     std::vector<double> df;                 // infinity where the variance is known
     std::vector<double> noncentrality;      // per unit of effect
-    std::vector<double> to_estimate;        // reported estimate = statistic * to_estimate
-    std::vector<double> to_corrected;       // the same with the small-sample correction (Hedges' g)
+    std::vector<double> to_estimate;        // reported estimate = statistic * to_estimate, in designs of means
+    std::vector<double> correction;         // small-sample correction J
     std::vector<double> critical;           // significant: statistic > critical (or < -critical, two-sided)
-    std::vector<double> gamma_c;            // chi-squared of df by Marsaglia & Tsang: constant c, and
-    std::vector<double> variance_per_cube;  // variance / sigma^2 = variance_per_cube * (1 + c x)^3
+    std::vector<double> equivalence_critical;  // of a one-sided test of equivalence; what it bounds, the design knows
+    std::vector<double> df_effect;          // of an F statistic's numerator
+    ChiColumns variance;                    // of the sample, over the true one; of a look's new observations
+    ChiColumns other;                       // see sim/design/studies.h
     std::vector<std::vector<double>> cut_critical;  // [cut][row]: critical value of a p rule's step
 
-    // Sizes by the alias method (sim/variate/alias.h): each kind has `size_rows` rows from `first_row`
-    // on; of its column that stands at `row`, `keep` stays there and the rest goes to row `other`.
+    // Of Welch's test: critical values as functions of its degrees of freedom.
+    CriticalCurve curve, equivalence_curve;
+    std::vector<CriticalCurve> cut_curves;  // per cut
+
+    // Of designs with interim looks: the row of a size's first look (the others follow, but for the last
+    // look, which has the size's own row), and the bound of |T| or T below which a look stops for futility.
+    std::vector<std::uint32_t> first_look;
+    std::vector<double> futility;
+
+    // Sizes by the alias method (sim/variate/alias.h): each kind has `sizes` rows from `first_row`
+    // on; of its column that stands at `row`, `keep` stays there and the rest goes to row `other_row`.
     std::vector<double> keep;
-    std::vector<std::uint64_t> other;
+    std::vector<std::uint64_t> other_row;
     struct Kind {
         std::uint32_t first_row = 0;
-        std::uint32_t size_rows = 0;
+        std::uint32_t sizes = 0;
+        std::optional<PlanTable> plan;    // of studies planned for each question: position to row
+        bool in_planned_effects = false;  // effects are in units of the effect that is planned for
     };
     std::vector<Kind> kinds;
 
-    /// Standard error of the reported estimate of a study in `row` with this statistic.
-    double standard_error(const Design& design, std::size_t row, double statistic) const;
+    /// What describes the study in `row` (the design's own sizes and bounds, as a plan).
+    TestPlan plan(std::size_t row) const;
 };
 
 /// The table of a science, with critical values for `cuts` (each at most once).

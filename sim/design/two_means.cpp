@@ -28,9 +28,8 @@ TestPlan plan(StudySize size) {
             std::numeric_limits<double>::infinity()};
 }
 
-double standard_error(StudySize size, double d) {
-    const double participants = static_cast<double>(size.n1) + static_cast<double>(size.n2);
-    return std::sqrt(inverse_sizes(size) + d * d / (2.0 * participants));
+double standard_error(const TestPlan& plan, double d) {
+    return std::sqrt(1.0 / (plan.noncentrality * plan.noncentrality) + d * d / (2.0 * plan.participants));
 }
 
 }  // namespace lacuna::two_means

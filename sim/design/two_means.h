@@ -11,8 +11,8 @@ inline constexpr std::uint32_t smallest_n = 2;  // per group; one fewer and Cohe
 /// Educational Statistics 6:107). The critical value is left at infinity.
 TestPlan plan(StudySize size);
 
-/// Standard error of d: sqrt((n1 + n2) / (n1 n2) + d^2 / (2 (n1 + n2))) (Hedges & Olkin 1985, Statistical
+/// Standard error of d: sqrt(1 / m^2 + d^2 / (2 (n1 + n2))), m the noncentrality per unit of d (Hedges & Olkin 1985, Statistical
 /// Methods for Meta-Analysis, ch. 5, eq. 15; cited from memory).
-double standard_error(StudySize size, double d);
+double standard_error(const TestPlan& plan, double d);
 
 }  // namespace lacuna::two_means

@@ -9,6 +9,9 @@ namespace lacuna {
 
 namespace {
 
+/// Kernels write whole vectors, so columns have room for so many entries more.
+constexpr std::size_t room_beyond = 16;
+
 Truth truth_of(bool real, double effect, double negligible) {
     if (!real || std::fabs(effect) <= negligible) return Truth::null;
     return effect > 0.0 ? Truth::real : Truth::real_negative;
@@ -41,6 +44,23 @@ void fill_two_effects(const PreparedScience& science, StreamKey key, Questions& 
     double* out = questions.effect.data();
     for (std::size_t q = 0; q < count; ++q) truth[q] = real[q] ? real_truth : null_truth;
     for (std::size_t q = 0; q < count; ++q) out[q] = effect[real[q]];
+}
+
+/// The effects that studies are planned for: of a real question its own, of another one drawn like a real
+/// one's, so that sizes tell nothing about the truth.
+void draw_planned(const PreparedScience& science, StreamKey key, std::uint32_t literature, ConductScratch& scratch,
+                  Questions& questions) {
+    questions.planned.clear();
+    if (!science.plans_for_truth()) return;
+    questions.planned = questions.effect;
+    scratch.chosen.clear();
+    for (std::size_t q = 0; q < questions.real.size(); ++q) {
+        if (!questions.real[q]) scratch.chosen.push_back(static_cast<std::uint32_t>(q));
+    }
+    scratch.drawn.resize(scratch.chosen.size());
+    science.effect.draw(key, {literature, Purpose::question_plan}, Purpose::question_plan_again,
+                        {questions.first, scratch.chosen.data(), scratch.chosen.size()}, scratch.drawn.data());
+    for (std::size_t i = 0; i < scratch.chosen.size(); ++i) questions.planned[scratch.chosen[i]] = scratch.drawn[i];
 }
 
 void draw_questions(const PreparedScience& science, StreamKey key, std::uint32_t literature, BlockRange range,
@@ -116,19 +136,61 @@ void draw_thetas(const PreparedScience& science, const StudyRound& round, bool e
     if (sd == 0.0) return;
     scratch.deviation.resize(count);
     normals(round.key, round.address(Purpose::study_effect), round.entities, scratch.deviation.data());
-    for (std::size_t i = 0; i < count; ++i) theta[i] += sd * scratch.deviation[i];
+    const auto move = [&](auto moved) {
+        for (std::size_t i = 0; i < count; ++i) theta[i] = moved(theta[i], sd * scratch.deviation[i]);
+    };
+    switch (science.science.design.test) {
+        case Test::correlation:  // on the scale of Fisher's z
+            return move([](double rho, double by) { return std::tanh(std::atanh(rho) + by); });
+        case Test::several_means:  // an f has no sign
+            return move([](double f, double by) { return std::fabs(f + by); });
+        case Test::two_means:
+        case Test::paired_means:
+        case Test::one_mean:
+        case Test::two_proportions:
+        case Test::known_variance:
+            return move([](double x, double by) { return x + by; });
+    }
 }
 
-/// Room for `count` more studies from `begin` on; kernels write whole vectors, so a little beyond.
-void make_room(Studies& studies, std::size_t size) {
+/// The effects that the round's studies are planned for; null where no kind plans for each question.
+const double* planned_of(const PreparedScience& science, const std::uint32_t* line, std::size_t begin, std::size_t count,
+                         Conducted& block) {
+    if (!science.plans_for_questions()) return nullptr;
+    block.studies.planned.resize(begin + count + room_beyond);
+    double* planned = block.studies.planned.data() + begin;
+    for (std::size_t i = 0; i < count; ++i) {
+        const std::size_t kind = block.lines.kind.empty() ? 0 : block.lines.kind[line[i]];
+        const PlanningEffect& effect = science.science.labs[kind].size.effect;
+        planned[i] = effect.is_true ? effect.optimism * block.questions.planned[block.lines.question[line[i]]]
+                                    : effect.value;
+    }
+    return planned;
+}
+
+/// Multiplies (or divides) columns of studies whose effects are in units of the planned one by that.
+void scale_by_planned(const PreparedScience& science, const std::uint8_t* kind, const double* planned,
+                      std::size_t count, bool divide, double* column) {
+    if (!planned) return;
+    for (std::size_t i = 0; i < count; ++i) {
+        if (!science.table.kinds[kind ? kind[i] : 0].in_planned_effects) continue;
+        const double unit = std::fabs(planned[i]);
+        column[i] = divide ? column[i] / unit : column[i] * unit;
+    }
+}
+
+/// Room for `size` studies.
+void make_room(const Design& design, Studies& studies, std::size_t size) {
     studies.line.resize(size);
     studies.row.resize(size);
     studies.theta.resize(size);
     studies.statistic.resize(size);
     studies.estimate.resize(size);
     studies.claim.resize(size);
+    studies.df.resize(fills_df(design) ? size : 0);
+    studies.standard_error.resize(fills_standard_error(design) ? size : 0);
+    if (!studies.planned.empty()) studies.planned.resize(size);
 }
-constexpr std::size_t room_beyond = 16;
 
 /// Lab kinds of the lines of a round; null where there is one.
 const std::uint8_t* kinds_of(const Lines& lines, bool every_line, std::size_t count, const std::uint32_t* line,
@@ -169,17 +231,27 @@ void run_round(const PreparedScience& science, StreamKey key, std::uint16_t numb
     Studies& studies = block.studies;
     const std::size_t begin = studies.round.back();
     const std::size_t count = scratch.active.size();
-    make_room(studies, begin + count + room_beyond);
+    make_room(science.science.design, studies, begin + count + room_beyond);
     std::copy(scratch.active.begin(), scratch.active.end(), studies.line.begin() + static_cast<std::ptrdiff_t>(begin));
     const std::uint32_t* line = studies.line.data() + begin;
     const bool every_line = count == lines.studies.size();
     const StudyRound round{key, block.literature, number, {lines.first, every_line ? nullptr : line, count}};
-    const StudyBatch batch{studies.row.data() + begin, studies.theta.data() + begin, studies.statistic.data() + begin,
-                           studies.estimate.data() + begin, studies.claim.data() + begin};
-    draw_sizes(round, science.table, kinds_of(lines, every_line, count, line, scratch), scratch.sampling,
-               studies.row.data() + begin);
-    draw_thetas(science, round, every_line, block, line, scratch, studies.theta.data() + begin);
+    const StudyBatch batch{studies.row.data() + begin,
+                           studies.theta.data() + begin,
+                           studies.statistic.data() + begin,
+                           studies.estimate.data() + begin,
+                           studies.claim.data() + begin,
+                           studies.df.empty() ? nullptr : studies.df.data() + begin,
+                           studies.standard_error.empty() ? nullptr : studies.standard_error.data() + begin};
+    const std::uint8_t* kinds = kinds_of(lines, every_line, count, line, scratch);
+    const double* planned = planned_of(science, line, begin, count, block);
+    double* theta = studies.theta.data() + begin;
+    draw_sizes(round, science.table, kinds, planned, scratch.sampling, batch.row);
+    draw_thetas(science, round, every_line, block, line, scratch, theta);
+    scale_by_planned(science, kinds, planned, count, true, theta);
     draw_studies(round, science.science.design, science.table, scratch.sampling, batch);
+    scale_by_planned(science, kinds, planned, count, false, theta);
+    scale_by_planned(science, kinds, planned, count, false, batch.estimate);
     count_claims(every_line, count, line, batch.claim, lines);
     studies.round.push_back(begin + count);
 }
@@ -201,7 +273,8 @@ void count_levels(const PreparedScience& science, Studies& studies) {
         level.clear();
         if (cuts.empty()) return;
         level.resize(count);
-        count_cuts(science.table, cuts, sides, count, studies.row.data(), studies.statistic.data(), level.data());
+        count_cuts(science.table, cuts, sides, count, studies.row.data(), studies.statistic.data(),
+                   studies.df.empty() ? nullptr : studies.df.data(), level.data());
     };
     fill(science.cuts_two, 2, studies.level_two);
     fill(science.cuts_one, 1, studies.level_one);
@@ -221,7 +294,7 @@ void run_studies(const PreparedScience& science, StreamKey key, ConductScratch& 
         if (science.longest_line == 1u) break;
         keep_going(science, lines, scratch);
     }
-    make_room(block.studies, block.studies.round.back());
+    make_room(science.science.design, block.studies, block.studies.round.back());
     count_levels(science, block.studies);
 }
 
@@ -248,6 +321,7 @@ void conduct(const PreparedScience& science, StreamKey key, const Roster& roster
     block.part = range.part;
     block.parts = range.parts;
     draw_questions(science, key, literature, range, scratch, block.questions);
+    draw_planned(science, key, literature, scratch, block.questions);
     place_lines(science, roster, range, scratch, block.lines);
     run_studies(science, key, scratch, block);
 }

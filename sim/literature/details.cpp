@@ -1,6 +1,10 @@
 #include "sim/literature/details.h"
 
 #include <algorithm>
+#include <cmath>
+
+#include "sim/design/design.h"
+#include "sim/design/p_values.h"
 
 namespace lacuna {
 
@@ -105,6 +109,17 @@ Ordered by_line(const Conducted& block) {
     return order;
 }
 
+/// Of the reported estimate. Where effects are in units of the planned one, so is the noncentrality.
+double standard_error(const PreparedScience& science, const Conducted& block, std::size_t s) {
+    const Studies& studies = block.studies;
+    if (!studies.standard_error.empty()) return studies.standard_error[s];
+    const std::size_t kind = block.lines.kind.empty() ? 0 : block.lines.kind[studies.line[s]];
+    const double unit = science.table.kinds[kind].in_planned_effects ? std::fabs(studies.planned[s]) : 1.0;
+    TestPlan plan = science.table.plan(studies.row[s]);
+    plan.noncentrality /= unit;
+    return reported_standard_error(science.science.design, plan, studies.estimate[s]);
+}
+
 void add_studies(const PreparedScenario& prepared, std::size_t science, const Conducted& block,
                  const std::vector<Outcome>& outcomes, Batch& batch) {
     const Studies& studies = block.studies;
@@ -116,6 +131,7 @@ void add_studies(const PreparedScenario& prepared, std::size_t science, const Co
     const auto at = [&](std::size_t i) { return order.entry[i]; };
     const auto line = [&](std::size_t i) { return studies.line[at(i)]; };
     const auto row = [&](std::size_t i) { return studies.row[at(i)]; };
+    const std::vector<double> p = p_values(design, table, studies);
     Filler filler(batch, studies.claim.size());
     filler.next([&](std::size_t) { return science; })
         .next([&](std::size_t) { return block.literature; })
@@ -128,10 +144,11 @@ void add_studies(const PreparedScenario& prepared, std::size_t science, const Co
         .next([&](std::size_t i) { return block.questions.effect[lines.question[line(i)]]; })
         .next([&](std::size_t i) { return studies.theta[at(i)]; })
         .next([&](std::size_t i) { return studies.estimate[at(i)]; })
-        .next([&](std::size_t i) { return studies.statistic[at(i)] * table.to_corrected[row(i)]; })
-        .next([&](std::size_t i) { return table.standard_error(design, row(i), studies.statistic[at(i)]); })
+        .next([&](std::size_t i) { return corrected_estimate(design, table.plan(row(i)), studies.estimate[at(i)]); })
+        .next([&](std::size_t i) { return standard_error(its, block, at(i)); })
         .next([&](std::size_t i) { return studies.statistic[at(i)]; })
-        .next([&](std::size_t i) { return table.df[row(i)]; })
+        .next([&](std::size_t i) { return studies.df.empty() ? table.df[row(i)] : studies.df[at(i)]; })
+        .next([&](std::size_t i) { return p[at(i)]; })
         .next([&](std::size_t i) { return block.questions.truth[lines.question[line(i)]]; })
         .next([&](std::size_t i) { return studies.claim[at(i)]; });
     for (std::size_t r = 0; r < outcomes.size(); ++r) {

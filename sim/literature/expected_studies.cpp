@@ -60,6 +60,11 @@ double finding_chance(const Science& science, const IntegerDistribution& sizes, 
 
 double mean_studies(const Science& science, const LabKind& kind) {
     if (kind.studies.kind == LineRule::Kind::fixed) return kind.studies.count;
+    if (kind.size.for_each_question()) {
+        const double rate = science.field.true_rate;
+        return rate * mean_length(kind.studies, kind.size.power) +
+               (1.0 - rate) * mean_length(kind.studies, science.design.alpha);
+    }
     const IntegerDistribution sizes = size_distribution(science.design, kind.size);
     const auto over = [&](const Distribution& effects) {
         double sum = 0.0;

@@ -29,11 +29,20 @@ double farthest(const Distribution& distribution) {
 /// true one; chances below 1e-16 are left out of each, and 1 / S is at most about Student's quantile.
 EffectScale scale_of(const Science& science, const TestTable& table) {
     const Field& field = science.field;
+    if (science.design.test == Test::correlation) return {0x1p-21};     // at most 1
+    if (science.design.test == Test::two_proportions) return {0x1p-15};  // at most 2 log(2 n + 1), n < 2^24
     const double normal = t_critical(infinity, 1e-16);
     const double m = *std::min_element(table.noncentrality.begin(), table.noncentrality.end());
     const double df = *std::min_element(table.df.begin(), table.df.end());
     const double effect = std::fmax(farthest(field.effect), farthest(field.null_effect));
-    const double numerator = effect + normal * (field.heterogeneity + 1.0 / m);
+    double unit = 1.0;  // of effects planned for
+    for (const LabKind& lab : science.labs) {
+        if (lab.size.kind != SizePlan::Kind::exact_power) continue;
+        const PlanningEffect& planned = lab.size.effect;
+        unit = std::fmax(unit, planned.is_true ? planned.optimism * farthest(field.effect) : std::fabs(planned.value));
+    }
+    const double groups = science.design.test == Test::several_means ? std::sqrt(science.design.groups) : 0.0;
+    const double numerator = effect + normal * field.heterogeneity + (normal + groups) * unit / m;
     const double most = numerator * t_critical(df, 1e-16);
     return {std::exp2(std::ceil(std::log2(most)) - 21.0)};
 }
@@ -68,6 +77,16 @@ PreparedScience::PreparedScience(const Science& its, const Cuts& cuts, bool labs
     for (std::size_t c = 0; c < table.cut_critical.size(); ++c) {
         (c < cuts.two_sided.size() ? cuts_two : cuts_one).push_back(c);
     }
+}
+
+bool PreparedScience::plans_for_questions() const {
+    return std::any_of(science.labs.begin(), science.labs.end(),
+                       [](const LabKind& lab) { return lab.size.for_each_question(); });
+}
+
+bool PreparedScience::plans_for_truth() const {
+    return std::any_of(science.labs.begin(), science.labs.end(),
+                       [](const LabKind& lab) { return lab.size.for_each_question() && lab.size.effect.is_true; });
 }
 
 std::size_t PreparedScenario::kind_code(const std::string& name) const {

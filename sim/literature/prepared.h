@@ -22,6 +22,10 @@ struct PreparedScience {
     std::uint32_t longest_line = 0;               // studies, over the kinds
     bool labs_are_stored;               // so that it must be known which lab runs a line
 
+    /// Whether some kind plans its sizes for each question, and for the questions' true effects.
+    bool plans_for_questions() const;
+    bool plans_for_truth() const;
+
     /// Whether it must be known which kind of lab runs a line, or even which lab.
     bool who_matters() const { return labs_are_stored || science.labs.size() > 1; }
 

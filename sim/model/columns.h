@@ -13,6 +13,7 @@ struct Questions {
     std::vector<std::uint8_t> real;   // 1: drawn as real
     std::vector<std::uint8_t> truth;  // a Truth: real, and not negligible
     std::vector<double> effect;
+    std::vector<double> planned;      // effect that studies are planned for; empty when none plans for true ones
 };
 
 /// The block's lines; one entry per line, lines of a question one after the other.
@@ -36,6 +37,9 @@ struct Studies {
     std::vector<double> statistic;
     std::vector<double> estimate;
     std::vector<std::uint8_t> claim;      // a Claim
+    std::vector<double> df;               // where they depend on the data; else empty
+    std::vector<double> standard_error;   // where the estimate does not give it; else empty
+    std::vector<double> planned;          // effect the study was planned for; empty when none plans for each question
     std::vector<std::uint8_t> level_two;  // cuts of two-sided p rules passed; empty when no rule asks
     std::vector<std::uint8_t> level_one;  // cuts of one-sided p rules passed; empty when no rule asks
 };

@@ -33,20 +33,71 @@ struct Field {
     bool operator==(const Field&) const = default;
 };
 
-enum class Test : std::uint8_t { two_means, known_variance };
+enum class Test : std::uint8_t {
+    two_means,
+    paired_means,
+    one_mean,
+    correlation,
+    two_proportions,
+    known_variance,
+    several_means
+};
 enum class EffectEstimate : std::uint8_t { d, g };
 
-/// How many observations a study takes (per group in two-means).
+/// The effect that a size is planned for.
+struct PlanningEffect {
+    bool is_true = false;    // the question's own effect, times `optimism`; else `value`
+    double value = 0.5;
+    double optimism = 1.0;
+
+    bool operator==(const PlanningEffect&) const = default;
+};
+
+/// How many observations a study takes (per group; of the first group where groups differ).
 struct SizePlan {
-    enum class Kind : std::uint8_t { fixed, distribution, power };
+    enum class Kind : std::uint8_t {
+        fixed,
+        distribution,
+        power,       // the smallest n that has the power
+        exact_power  // n observations, with noise such that the power is exactly this
+    };
     Kind kind = Kind::fixed;
     std::uint32_t n = 20;         // fixed
     Distribution distribution;    // distribution
     bool round_down = false;      // distribution: floor instead of nearest (halves up)
-    double power = 0.8;           // power: the target, two-sided tests counting both tails
-    double effect = 0.5;          // power: the planning effect
+    double power = 0.8;           // power, exact_power: two-sided tests count both tails
+    PlanningEffect effect;        // power, exact_power
+    std::uint32_t most = 10000;   // power for true effects: no study is larger
+
+    bool for_each_question() const {
+        return kind == Kind::exact_power || (kind == Kind::power && effect.is_true);
+    }
 
     bool operator==(const SizePlan&) const = default;
+};
+
+/// Two one-sided tests after a result that is not significant: is the effect within -bound .. bound?
+struct Equivalence {
+    double bound = 0.0;   // on the design's effect scale; 0: not tested
+    double alpha = 0.05;  // of each
+    bool tested() const { return bound > 0.0; }
+
+    bool operator==(const Equivalence&) const = default;
+};
+
+/// Interim looks at the data.
+struct Looks {
+    enum class Boundary : std::uint8_t {
+        pocock,
+        obrien_fleming,
+        spending_pocock,         // Lan & DeMets, with the shape of Pocock's
+        spending_obrien_fleming  // Lan & DeMets, with the shape of O'Brien & Fleming's
+    };
+    std::uint32_t count = 1;  // looks, the last included; 1: none before the end
+    Boundary boundary = Boundary::obrien_fleming;
+    double futility = -infinity;  // z below which (in absolute value if two-sided) an interim look stops
+
+    bool operator==(const Looks&) const = default;
 };
 
 /// [design]
@@ -55,8 +106,14 @@ struct Design {
     double alpha = 0.05;
     int sides = 2;                                 // 1: significant only in the predicted direction
     Findings findings = Findings::either;
-    EffectEstimate estimate = EffectEstimate::d;   // what two-means studies report
+    EffectEstimate estimate = EffectEstimate::d;   // what studies of means report
     SizePlan size;
+    bool welch = false;                            // two-means: Welch's test instead of Student's
+    double allocation = 1.0;                       // designs of two groups: n2 / n1
+    std::uint32_t groups = 3;                      // several-means
+    double base_rate = 0.5;                        // two-proportions: rate of the second (control) group
+    Equivalence equivalence{};
+    Looks looks{};
 
     bool operator==(const Design&) const = default;
 };

@@ -64,7 +64,7 @@ TableSpec studies_table(const std::vector<std::string>& regimes) {
         {"lab", ColumnType::i32, "code", "lab number within the literature", {}},
         {"line", ColumnType::i32, "code", "line number within the literature", {}},
         {"study", ColumnType::i32, "code", "number of the study in its line, from 0", {}},
-        {"n1", ColumnType::i32, "participants", "size of the first (or only) group", {}},
+        {"n1", ColumnType::i32, "participants", "size of the first (or only) group; of each in several-means", {}},
         {"n2", ColumnType::i32, "participants", "size of the second group; 0 in designs with one", {}},
         {"question_effect", ColumnType::f64, "effect", "true effect of the question", {}},
         {"true_effect", ColumnType::f64, "effect", "true effect of the study", {}},
@@ -75,8 +75,9 @@ TableSpec studies_table(const std::vector<std::string>& regimes) {
          "estimate with the exact small-sample correction; equal to the estimate where none applies",
          {}},
         {"standard_error", ColumnType::f64, "effect", "standard error of the estimate, as reported", {}},
-        {"statistic", ColumnType::f64, "1", "t or z", {}},
-        {"df", ColumnType::f64, "1", "degrees of freedom; infinite for z", {}},
+        {"statistic", ColumnType::f64, "1", "t, z or F", {}},
+        {"df", ColumnType::f64, "1", "degrees of freedom (of an F's denominator); infinite for z", {}},
+        {"p", ColumnType::f64, "1", "of the design's test, one- or two-sided; with interim looks as if there were none", {}},
         {"truth", ColumnType::u8, "1", "truth of the question", labels(truth_names)},
         {"claim", ColumnType::u8, "1", "what the study says", labels(claim_names)}};
     table.columns.insert(table.columns.end(), own.begin(), own.end());

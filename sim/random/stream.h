@@ -30,7 +30,12 @@ enum class Purpose : std::uint8_t {
     writing = 12,               // is the manuscript written up
     results_blind = 13,         // is it judged before results are seen (index: journal)
     acceptance = 14,            // is it accepted (index: journal)
-    refinement = 15             // further bits of a 32-bit word that decided nothing
+    refinement = 15,            // further bits of a 32-bit word that decided nothing
+    question_plan = 16,         // the effect that studies of a question that is not real are planned for
+    question_plan_again = 17,   // after a draw fell outside the truncation bounds
+    study_other_data = 18,      // as study_data, for a second chi-squared or a second group
+    study_other_test = 19,      // further bits of its acceptance test
+    study_other_again = 20      // draws after a rejection
 };
 
 /// The key of all streams of a run.

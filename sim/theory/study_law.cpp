@@ -9,9 +9,10 @@ namespace lacuna {
 
 namespace {
 
-std::vector<double> critical_values(Test test, double df, const std::vector<double>& cuts, int sides) {
+std::vector<double> critical_values(const Design& design, const TestPlan& plan, const std::vector<double>& cuts,
+                                    int sides) {
     std::vector<double> critical;
-    for (const double p : cuts) critical.push_back(critical_value(test, df, p, sides));
+    for (const double p : cuts) critical.push_back(critical_value(design, plan, p, sides));
     return critical;
 }
 
@@ -52,8 +53,8 @@ void StudyLaw::add_size(const Science& science, std::uint32_t n, double weight, 
                         const std::vector<double>& cuts_one) {
     const Design& design = science.design;
     const TestPlan plan = describe(design, n);
-    const std::vector<double> two = critical_values(design.test, plan.df, cuts_two, 2);
-    const std::vector<double> one = critical_values(design.test, plan.df, cuts_one, 1);
+    const std::vector<double> two = critical_values(design, plan, cuts_two, 2);
+    const std::vector<double> one = critical_values(design, plan, cuts_one, 1);
     // Zero is an end too, so that |estimate| is an estimate or its negative throughout a piece.
     std::vector<double> ends{-infinity, 0.0, plan.critical, infinity};
     if (design.sides == 2) ends.push_back(-plan.critical);

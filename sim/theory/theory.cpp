@@ -89,10 +89,26 @@ void add_question(const LineTotals& line, const Effect& effect, double weight, s
     }
 }
 
+/// Why the law of a study is not worked out here; empty where it is.
+std::string beyond_reach(const Science& science) {
+    const Design& design = science.design;
+    const bool of_means = design.test == Test::two_means || design.test == Test::paired_means ||
+                          design.test == Test::one_mean || design.test == Test::known_variance;
+    if (!of_means) return "they are worked out for designs of one or two means only";
+    if (design.welch) return "the degrees of freedom of Welch's test depend on the data";
+    if (design.looks.count > 1) return "studies have interim looks";
+    if (design.equivalence.tested()) return "equivalence is tested";
+    for (const LabKind& kind : science.labs) {
+        if (kind.size.for_each_question()) return "sizes are planned for each question";
+    }
+    return "";
+}
+
 }  // namespace
 
 Theory expectations(const Regime& regime) {
     const Science& science = regime.science;
+    if (const std::string why = beyond_reach(science); !why.empty()) return {{}, why};
     const PublicationChance chance(regime.rules);
     std::array<ScopeTotals, 3> totals{};
     double integrals = 0.0;

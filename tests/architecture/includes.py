@@ -11,7 +11,7 @@ import sys
 
 root = pathlib.Path(__file__).resolve().parents[2]
 LAYERS = {
-    "sim": dict(base=0, random=1, stats=1, model=2, variate=2, tail=2, design=3, publication=3, tally=3, literature=4,
+    "sim": dict(base=0, random=1, stats=1, model=2, variate=2, tail=2, sequential=2, design=3, publication=3, tally=3, literature=4,
                 theory=4, config=5, store=5, engine=6),
     "analysis": dict(record=1, estimand=2, report=5, cli=6),
 }

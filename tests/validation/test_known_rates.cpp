@@ -5,7 +5,7 @@
 #include <catch2/catch.hpp>
 #include <cmath>
 
-#include "sim/design/design.h"
+#include "sim/stats/student_t.h"
 #include "sim/theory/theory.h"
 #include "tests/oracle/reference_csv.h"
 #include "tests/oracle/run_scenario.h"
@@ -29,7 +29,7 @@ std::string one_study_field(std::uint64_t studies, const std::string& field, con
 
 /// The effect at which a two-sided z test of one observation has this power.
 double effect_of_power(double power, double alpha) {
-    const double c = critical_value(Test::known_variance, infinity, alpha, 2);
+    const double c = t_critical(infinity, 0.5 * alpha);
     const auto chance = [c](double d) {
         return 0.5 * std::erfc((c - d) / std::sqrt(2.0)) + 0.5 * std::erfc((c + d) / std::sqrt(2.0));
     };

@@ -97,7 +97,7 @@ name = "C"
 )",
                                       "text", {});
     const std::vector<Difference> all = differences(s);
-    REQUIRE(all.size() == 8);  // plan, n, power, effect of the design and of the labs that follow it
+    REQUIRE(all.size() == 12);  // plan, n, power, effect, optimism, most of the design and of the labs that follow it
     CHECK(all[0].key == "design.size.plan");
     CHECK(all[1].key == "design.size.n");
     CHECK(all[1].first == "20");

@@ -100,7 +100,7 @@ compress = false
     SizePlan power;
     power.kind = SizePlan::Kind::power;
     power.power = 0.9;
-    power.effect = 0.75;
+    power.effect.value = 0.75;
     CHECK(science.design == Design{Test::known_variance, 0.005, 1, Findings::predicted, EffectEstimate::d, power});
     SizePlan drawn;
     drawn.kind = SizePlan::Kind::distribution;

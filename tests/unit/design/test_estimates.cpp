@@ -14,13 +14,13 @@ TEST_CASE("d, g and their standard errors", "[design]") {
     const double t = 2.5, d = t * std::sqrt(2.0 / 20.0);
     CHECK(reported_estimate(design, plan, t) == Approx(d).epsilon(1e-15));
     const double se = std::sqrt(0.1 + d * d / 80.0);
-    CHECK(reported_standard_error(design, plan, t) == Approx(se).epsilon(1e-15));
+    CHECK(reported_standard_error(design, plan, d) == Approx(se).epsilon(1e-15));
     CHECK(minimal_significant_effect(design, plan) == Approx(2.024394163911970 * std::sqrt(0.1)).epsilon(1e-13));
     design.estimate = EffectEstimate::g;
     // J(38) = Gamma(19) / (sqrt(19) Gamma(18.5)): 0.9801104021309462728 (mpmath).
     CHECK(plan.correction == Approx(0.9801104021309462728).epsilon(1e-13));
     CHECK(reported_estimate(design, plan, t) == Approx(plan.correction * d).epsilon(1e-15));
-    CHECK(reported_standard_error(design, plan, t) == Approx(plan.correction * se).epsilon(1e-15));
+    CHECK(reported_standard_error(design, plan, plan.correction * d) == Approx(plan.correction * se).epsilon(1e-15));
 }
 
 TEST_CASE("Known variance reports the mean", "[design]") {

@@ -41,7 +41,7 @@ TEST_CASE("Power of two means of unequal sizes (reference/power_t_unequal.csv)",
         const Design design = make(Test::two_means, number(row, "alpha"), std::stoi(row.at("sides")));
         TestPlan plan = two_means::plan(
             {static_cast<std::uint32_t>(number(row, "n1")), static_cast<std::uint32_t>(number(row, "n2"))});
-        plan.critical = critical_value(design.test, plan.df, design.alpha, design.sides);
+        plan.critical = critical_value(design, plan, design.alpha, design.sides);
         INFO("n1 " << plan.size.n1 << " n2 " << plan.size.n2 << " d " << row.at("d"));
         CHECK(power(design, plan, number(row, "d")) == Approx(number(row, "power")).margin(1e-8).epsilon(0));
     }
@@ -91,8 +91,8 @@ TEST_CASE("The smallest studies", "[design]") {
     CHECK(planned_n(two, 0.04, 0.0) == 2);
     CHECK(planned_n(two, 0.8, 50.0) == 2);
     CHECK(planned_n(make(Test::known_variance, 0.05, 2), 0.8, 50.0) == 1);
-    CHECK(smallest_n(Test::two_means) == 2);
-    CHECK(smallest_n(Test::known_variance) == 1);
+    CHECK(smallest_n(two) == 2);
+    CHECK(smallest_n(make(Test::known_variance, 0.05, 2)) == 1);
 }
 
 TEST_CASE("A planned n is smallest", "[design]") {

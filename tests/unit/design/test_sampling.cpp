@@ -54,7 +54,7 @@ Drawn draw(const Science& science, const TestTable& table, Entities entities, do
     Drawn d{std::vector<std::uint32_t>(room), std::vector<double>(room, effect), std::vector<double>(room),
             std::vector<double>(room), std::vector<std::uint8_t>(room)};
     SamplingScratch scratch;
-    draw_sizes(round, table, nullptr, scratch, d.row.data());
+    draw_sizes(round, table, nullptr, nullptr, scratch, d.row.data());
     draw_studies(round, science.design, table, scratch,
                  {d.row.data(), d.theta.data(), d.statistic.data(), d.estimate.data(), d.claim.data()});
     d.row.resize(entities.count);
@@ -185,8 +185,8 @@ TEST_CASE("Levels count the cuts that p is below", "[design]") {
     const TestTable table = test_table(science, {{0.01, 2}, {0.05, 2}, {0.3, 2}, {0.025, 1}, {0.6, 1}});
     const Drawn d = draw(science, table, {0, nullptr, 4000}, 0.4);
     std::vector<std::uint8_t> two(4000), one(4000);
-    count_cuts(table, {0, 1, 2}, 2, 4000, d.row.data(), d.statistic.data(), two.data());
-    count_cuts(table, {3, 4}, 1, 4000, d.row.data(), d.statistic.data(), one.data());
+    count_cuts(table, {0, 1, 2}, 2, 4000, d.row.data(), d.statistic.data(), nullptr, two.data());
+    count_cuts(table, {3, 4}, 1, 4000, d.row.data(), d.statistic.data(), nullptr, one.data());
     for (std::size_t i = 0; i < 4000; ++i) {
         const double upper = noncentral_t_upper(d.statistic[i], 18, 0);
         const double p = 2 * noncentral_t_upper(std::fabs(d.statistic[i]), 18, 0);

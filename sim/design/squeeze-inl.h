@@ -1,0 +1,73 @@
+// Shared by the kernels that draw chi-squared variates: gathers by row, and the squeeze of
+// sim/variate/gamma.h with the list of entries that it leaves open. Included once per vector target.
+#if defined(LACUNA_SQUEEZE_INL_H) == defined(HWY_TARGET_TOGGLE)
+#ifdef LACUNA_SQUEEZE_INL_H
+#undef LACUNA_SQUEEZE_INL_H
+#else
+#define LACUNA_SQUEEZE_INL_H
+#endif
+
+#include "sim/design/sampling.h"
+#include "sim/random/philox-inl.h"
+
+HWY_BEFORE_NAMESPACE();
+namespace lacuna::HWY_NAMESPACE {
+
+constexpr std::size_t most_lanes = 2 * HWY_MAX_BYTES / 8;
+
+struct I2 {
+    VecI a, b;
+};
+
+/// Rows as gather indices.
+HWY_INLINE I2 load_rows(const std::uint32_t* row) {
+    const hn::Rebind<std::int32_t, F64> half;
+    const auto* from = reinterpret_cast<const std::int32_t*>(row);
+    return {hn::PromoteTo(I64(), hn::LoadU(half, from)), hn::PromoteTo(I64(), hn::LoadU(half, from + hn::Lanes(half)))};
+}
+
+HWY_INLINE F2 gather(const std::vector<double>& column, I2 row) {
+    return {hn::GatherIndex(F64(), column.data(), row.a), hn::GatherIndex(F64(), column.data(), row.b)};
+}
+
+/// Lists the entries of 2 * Lanes from `at` on (below `count`) whose draw x, with y = c x, the squeeze does
+/// not accept, with the draws behind them.
+HWY_INLINE void list_open(F2 error, F2 x, F2 y, F2 spare, std::size_t at, std::size_t count, SamplingScratch& scratch) {
+    const F64 f;
+    const std::size_t lanes = hn::Lanes(f);
+    // The squeeze's bound: d (3/4 y^4 + [y < 0] 6/5 |y|^5) with d = 1 / (9 c^2), so d y^2 = x^2 / 9.
+    const F2 below{hn::Max(hn::Neg(y.a), hn::Zero(f)), hn::Max(hn::Neg(y.b), hn::Zero(f))};
+    const F2 bound = (all(1.0 / 12.0) * (x * x)) * (y * y) * fma(below, all(1.6), 1.0);
+    // The test's uniform begins with 12 spare bits; accept surely when its upper end does.
+    const F2 limit = all(4095.0) - all(4096.0) * bound;
+    const auto sure_a = hn::And(hn::Lt(spare.a, limit.a), hn::Ge(y.a, hn::Set(f, -0.5)));
+    const auto sure_b = hn::And(hn::Lt(spare.b, limit.b), hn::Ge(y.b, hn::Set(f, -0.5)));
+    if (HWY_LIKELY(hn::AllTrue(f, hn::And(sure_a, sure_b)))) return;
+    std::uint8_t bits[2][8] = {};
+    hn::StoreMaskBits(f, sure_a, bits[0]);
+    hn::StoreMaskBits(f, sure_b, bits[1]);
+    double errors[most_lanes], roots[most_lanes], spares[most_lanes];
+    store(error, errors);
+    store(x, roots);
+    store(spare, spares);
+    for (std::size_t lane = 0; lane < 2 * lanes && at + lane < count; ++lane) {
+        if (bits[lane / lanes][0] >> (lane % lanes) & 1) continue;
+        scratch.open.push_back(static_cast<std::uint32_t>(at + lane));
+        scratch.error.push_back(errors[lane]);
+        scratch.root.push_back(roots[lane]);
+        scratch.spare.push_back(static_cast<std::uint32_t>(spares[lane]));
+    }
+}
+
+HWY_INLINE U2 entity_blocks(const StudyRound& round, std::size_t at, std::size_t n) {
+    if (round.entities.offsets == nullptr) return blocks_from(round.entities.first + at);
+    std::uint64_t block[most_lanes] = {};
+    for (std::size_t lane = 0; lane < n; ++lane) block[lane] = round.entity(at + lane);
+    const U64 d;
+    return {hn::LoadU(d, block), hn::LoadU(d, block + hn::Lanes(d))};
+}
+
+}  // namespace lacuna::HWY_NAMESPACE
+HWY_AFTER_NAMESPACE();
+
+#endif
