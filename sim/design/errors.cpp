@@ -7,31 +7,48 @@
 #include <hwy/foreach_target.h>
 #include <hwy/highway.h>
 
-#include "sim/design/squeeze-inl.h"
+#include "sim/design/studies-inl.h"
 
 HWY_BEFORE_NAMESPACE();
 namespace lacuna::HWY_NAMESPACE {
 
-void Errors(const StudyRound& round, Purpose purpose, const ChiColumns& chi, const std::uint32_t* row,
-            SamplingScratch& scratch, double* z, double* v) {
+/// Scaled chi-squareds of normal draws x, stored; what the squeeze leaves open is listed.
+HWY_INLINE void store_chi(const ChiColumns& chi, I2 rows, F2 error, F2 x, F2 spare, std::size_t at, std::size_t count,
+                          OpenDraws& open, double* v) {
+    const F64 f;
+    const F2 c = gather(chi.c, rows);
+    const F2 y = x * F2{hn::Max(c.a, hn::Zero(f)), hn::Max(c.b, hn::Zero(f))};
+    const F2 root = y + all(1.0);
+    const F2 cube = root * root * root;
+    const F2 square = x * x;
+    const Mask2 one_degree = less(c, all(0.0));
+    const F2 variate{hn::IfThenElse(one_degree.a, square.a, cube.a), hn::IfThenElse(one_degree.b, square.b, cube.b)};
+    store(gather(chi.per_cube, rows) * variate, v + at);
+    list_open(error, x, y, spare, at, count, open);
+}
+
+/// `other_v` holds the normals behind the second chi-squared, and is filled with it; null where there is none.
+void Errors(const StudyRound& round, const ChiColumns& chi, const ChiColumns& other, const std::uint32_t* row,
+            SamplingScratch& scratch, double* z, double* v, double* other_v) {
     const RoundKeys keys(round.key);
     const std::size_t lanes = 2 * hn::Lanes(F64());
     const std::size_t count = round.entities.count;
-    for (std::size_t at = 0; at < count; at += lanes) {
+    const auto draw = [&](std::size_t at) HWY_ATTR {
         const U2 block = entity_blocks(round, at, HWY_MIN(lanes, count - at));
-        const Block bits = philox(counter(round.address(purpose), block), keys);
+        return philox(counter(round.address(Purpose::study_data), block), keys);
+    };
+    Block next = count > 0 ? draw(0) : Block{};
+    for (std::size_t at = 0; at < count; at += lanes) {
+        const Block bits = next;
+        if (at + lanes < count) next = draw(at + lanes);
         const Pair data = normal_pair(bits);
-        store(data.first, z + at);
         const I2 rows = load_rows(row + at);
-        const F2 c = gather(chi.c, rows);
-        const F2 y = data.second * F2{hn::Max(c.a, hn::Zero(F64())), hn::Max(c.b, hn::Zero(F64()))};
-        const F2 root = y + all(1.0);
-        const F2 cube = root * root * root;
-        const F2 square = data.second * data.second;
-        const F2 variate{hn::IfThenElse(hn::Lt(c.a, hn::Zero(F64())), square.a, cube.a),
-                         hn::IfThenElse(hn::Lt(c.b, hn::Zero(F64())), square.b, cube.b)};
-        store(gather(chi.per_cube, rows) * variate, v + at);
-        list_open(data.first, data.second, y, spare_bits(bits), at, count, scratch);
+        store(data.first, z + at);
+        store_chi(chi, rows, data.first, data.second, spare_bits(bits), at, count, scratch.draws, v);
+        if (other_v) {
+            const F2 x = load(other_v + at);
+            store_chi(other, rows, data.first, x, other_spare_bits(bits), at, count, scratch.other_draws, other_v);
+        }
     }
 }
 
@@ -43,14 +60,33 @@ namespace lacuna {
 
 HWY_EXPORT(Errors);
 
-void draw_errors(const StudyRound& round, ErrorPurposes purposes, const ChiColumns& chi, const std::uint32_t* row,
-                 SamplingScratch& scratch, double* z, double* v) {
-    scratch.clear_open();
-    HWY_DYNAMIC_DISPATCH(Errors)(round, purposes.data, chi, row, scratch, z, v);
-    for (std::size_t k = 0; k < scratch.open.size(); ++k) {
-        const std::uint32_t i = scratch.open[k];
-        v[i] = settled_chi(round, purposes.test, purposes.again, chi, row[i], k, scratch);
+namespace {
+
+void settle(const StudyRound& round, Purpose test, Purpose again, const ChiColumns& chi, const std::uint32_t* row,
+            const OpenDraws& open, double* v) {
+    for (std::size_t k = 0; k < open.entry.size(); ++k) {
+        const std::uint32_t i = open.entry[k];
+        v[i] = settled_chi(round, test, again, chi, row[i], k, open);
     }
+}
+
+}  // namespace
+
+void draw_errors(const StudyRound& round, const ChiColumns& chi, const std::uint32_t* row, SamplingScratch& scratch,
+                 double* z, double* v) {
+    scratch.draws.clear();
+    HWY_DYNAMIC_DISPATCH(Errors)(round, chi, chi, row, scratch, z, v, nullptr);
+    settle(round, Purpose::study_variance_test, Purpose::study_variance_again, chi, row, scratch.draws, v);
+}
+
+void draw_two_errors(const StudyRound& round, const ChiColumns& chi, const ChiColumns& other, const std::uint32_t* row,
+                     SamplingScratch& scratch, double* z, double* v, double* other_v) {
+    scratch.draws.clear();
+    scratch.other_draws.clear();
+    normals(round.key, round.address(Purpose::study_other_data), round.entities, other_v);
+    HWY_DYNAMIC_DISPATCH(Errors)(round, chi, other, row, scratch, z, v, other_v);
+    settle(round, Purpose::study_variance_test, Purpose::study_variance_again, chi, row, scratch.draws, v);
+    settle(round, Purpose::study_other_test, Purpose::study_other_again, other, row, scratch.other_draws, other_v);
 }
 
 }  // namespace lacuna

@@ -1,35 +1,50 @@
-#include <algorithm>
-#include <cmath>
-
 #include "sim/design/errors.h"
 #include "sim/design/studies.h"
 
-namespace lacuna {
+#undef HWY_TARGET_INCLUDE
+#define HWY_TARGET_INCLUDE "sim/design/mean_studies.cpp"
+#include <hwy/foreach_target.h>
+#include <hwy/highway.h>
+
+#include "sim/design/studies-inl.h"
+
+HWY_BEFORE_NAMESPACE();
+namespace lacuna::HWY_NAMESPACE {
 
 /// In units of the standard error's sigma the mean difference is delta m + Z; both one-sided tests at the
 /// bound b reject when |delta m + Z| < b m - c S, S the sample's standard deviation (Schuirmann 1987,
 /// Journal of Pharmacokinetics and Biopharmaceutics 15:657).
+void MeanStudies(std::size_t count, const Design& design, const TestTable& table, SamplingScratch& scratch,
+                 const StudyBatch& batch) {
+    const bool variance_known = design.test == Test::known_variance;
+    for_studies(count, batch.row, [&](std::size_t at, I2 rows) HWY_ATTR {
+        const F2 m = gather(table.noncentrality, rows);
+        const F2 numerator = fma(load(batch.theta + at), m, load(scratch.z.data() + at));
+        const F2 v = variance_known ? all(1.0) : load(scratch.v.data() + at);
+        const F2 inverse = reciprocal_sqrt(v);
+        const F2 t = numerator * inverse;
+        const F2 margin = all(design.equivalence.bound) * m - gather(table.equivalence_critical, rows) * (v * inverse);
+        store(t, batch.statistic + at);
+        store(t * gather(table.to_estimate, rows), batch.estimate + at);
+        store_claims(t, gather(table.critical, rows), design.sides == 2, less(absolute(numerator), margin), batch.claim + at);
+    });
+}
+
+}  // namespace lacuna::HWY_NAMESPACE
+HWY_AFTER_NAMESPACE();
+
+#if HWY_ONCE
+namespace lacuna {
+
+HWY_EXPORT(MeanStudies);
+
 void draw_mean_studies(const StudyRound& round, const Design& design, const TestTable& table,
                        SamplingScratch& scratch, StudyBatch batch) {
     const std::size_t count = round.entities.count;
-    scratch.z.resize(count + 16);
-    scratch.v.resize(count + 16);
-    draw_errors(round, study_errors, table.variance, batch.row, scratch, scratch.z.data(), scratch.v.data());
-    const bool variance_known = design.test == Test::known_variance;
-    for (std::size_t i = 0; i < count; ++i) {
-        const std::uint32_t row = batch.row[i];
-        const double s = variance_known ? 1.0 : std::sqrt(scratch.v[i]);
-        const double numerator = std::fma(batch.theta[i], table.noncentrality[row], scratch.z[i]);
-        const double t = numerator / s;
-        batch.statistic[i] = t;
-        batch.estimate[i] = t * table.to_estimate[row];
-        Claim claim = claim_of(t, table.critical[row], design.sides);
-        const double margin = design.equivalence.bound * table.noncentrality[row];
-        if (claim == Claim::inconclusive && std::fabs(numerator) < margin - table.equivalence_critical[row] * s) {
-            claim = Claim::equivalent;
-        }
-        batch.claim[i] = static_cast<std::uint8_t>(claim);
-    }
+    for (auto* column : {&scratch.z, &scratch.v}) column->resize(count + 16);
+    draw_errors(round, table.variance, batch.row, scratch, scratch.z.data(), scratch.v.data());
+    HWY_DYNAMIC_DISPATCH(MeanStudies)(count, design, table, scratch, batch);
 }
 
 }  // namespace lacuna
+#endif

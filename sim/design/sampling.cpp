@@ -10,23 +10,10 @@
 #include <hwy/foreach_target.h>
 #include <hwy/highway.h>
 
-#include "sim/design/squeeze-inl.h"
+#include "sim/design/studies-inl.h"
 
 HWY_BEFORE_NAMESPACE();
 namespace lacuna::HWY_NAMESPACE {
-
-/// Claim codes: 1 above the critical value, 2 below its negative when the test has two sides.
-HWY_INLINE void store_claims(VecF t, VecF critical, bool two_sided, std::uint8_t* claim) {
-    const I64 i;
-    const auto up = hn::RebindMask(i, hn::Gt(t, critical));
-    VecI code = hn::IfThenElseZero(up, hn::Set(i, 1));
-    if (two_sided) {
-        const auto down = hn::RebindMask(i, hn::Lt(t, hn::Neg(critical)));
-        code = hn::Or(code, hn::IfThenElseZero(down, hn::Set(i, 2)));
-    }
-    const hn::Rebind<std::uint8_t, F64> bytes;
-    hn::StoreU(hn::TruncateTo(bytes, hn::BitCast(U64(), code)), bytes, claim);
-}
 
 /// Entries of a StudyBatch from `at` on, stored.
 HWY_INLINE void store_studies(const TestTable& table, bool two_sided, F2 statistic, I2 row, const StudyBatch& batch,
@@ -34,8 +21,7 @@ HWY_INLINE void store_studies(const TestTable& table, bool two_sided, F2 statist
     store(statistic, batch.statistic + at);
     store(statistic * gather(table.to_estimate, row), batch.estimate + at);
     const F2 critical = gather(table.critical, row);
-    store_claims(statistic.a, critical.a, two_sided, batch.claim + at);
-    store_claims(statistic.b, critical.b, two_sided, batch.claim + at + hn::Lanes(F64()));
+    store_claims(statistic, critical, two_sided, none(), batch.claim + at);
 }
 
 /// Student's t for 2 * Lanes entries from `at` on. Entries whose variance draw the squeeze of
@@ -50,7 +36,7 @@ HWY_INLINE void student_studies(const TestTable& table, bool two_sided, Pair dat
     const F2 variance = gather(table.variance.per_cube, row) * (root * root * root);
     const F2 mean = fma(load(batch.theta + at), gather(table.noncentrality, row), error);
     store_studies(table, two_sided, mean * reciprocal_sqrt(variance), row, batch, at);
-    list_open(error, x, y, spare, at, count, scratch);
+    list_open(error, x, y, spare, at, count, scratch.draws);
 }
 
 /// All studies of a round. `student`: t, else z. Columns must be readable and writable up to the next
@@ -126,12 +112,12 @@ constexpr std::size_t padded(std::size_t count) { return (count + 15) / 16 * 16;
 /// Studies whose first variance draw needs the exact acceptance test, and their further draws.
 void settle_open(const StudyRound& round, const Design& design, const TestTable& table, SamplingScratch& scratch,
                  const StudyBatch& batch) {
-    for (std::size_t k = 0; k < scratch.open.size(); ++k) {
-        const std::uint32_t i = scratch.open[k];
+    for (std::size_t k = 0; k < scratch.draws.entry.size(); ++k) {
+        const std::uint32_t i = scratch.draws.entry[k];
         const std::uint32_t row = batch.row[i];
         const double variance = settled_chi(round, Purpose::study_variance_test, Purpose::study_variance_again,
-                                            table.variance, row, k, scratch);
-        const double mean = std::fma(batch.theta[i], table.noncentrality[row], scratch.error[k]);
+                                            table.variance, row, k, scratch.draws);
+        const double mean = std::fma(batch.theta[i], table.noncentrality[row], scratch.draws.error[k]);
         const double t = mean / std::sqrt(variance);
         batch.statistic[i] = t;
         batch.estimate[i] = t * table.to_estimate[row];
@@ -174,13 +160,13 @@ Claim claim_of(double statistic, double critical, int sides) {
 }
 
 double settled_chi(const StudyRound& round, Purpose test, Purpose again, const ChiColumns& chi, std::uint32_t row,
-                   std::size_t k, const SamplingScratch& scratch) {
+                   std::size_t k, const OpenDraws& open) {
     const double c = chi.c[row];
-    if (c <= 0.0) return c < 0.0 ? chi.per_cube[row] * scratch.root[k] * scratch.root[k] : 0.0;
+    if (c <= 0.0) return c < 0.0 ? chi.per_cube[row] * open.root[k] * open.root[k] : 0.0;
     const GammaShape shape{1.0 / (9.0 * c * c), c};
-    const std::uint64_t entity = round.entity(scratch.open[k]);
-    double x = scratch.root[k];
-    const double u = refined(round.key, round.address(test), entity, scratch.spare[k], 12);
+    const std::uint64_t entity = round.entity(open.entry[k]);
+    double x = open.root[k];
+    const double u = refined(round.key, round.address(test), entity, open.spare[k], 12);
     if (!gamma_accepts(shape, x, u)) {
         Stream stream(round.key, round.address(again), entity);
         x = gamma_normal(stream, shape);
@@ -221,7 +207,7 @@ void draw_sizes(const StudyRound& round, const TestTable& table, const std::uint
 void draw_simple_studies(const StudyRound& round, const Design& design, const TestTable& table,
                          SamplingScratch& scratch, StudyBatch batch) {
     const bool student = design.test != Test::known_variance;
-    scratch.clear_open();
+    scratch.draws.clear();
     HWY_DYNAMIC_DISPATCH(Studies)(round, student, design.sides == 2, table, scratch, batch);
     settle_open(round, design, table, scratch, batch);
 }

@@ -11,6 +11,20 @@
 
 namespace lacuna {
 
+/// Entries whose chi-squared a kernel leaves to exact scalar code, with the draws behind them.
+struct OpenDraws {
+    std::vector<std::uint32_t> entry;
+    std::vector<double> error, root;
+    std::vector<std::uint32_t> spare;
+
+    void clear() {
+        entry.clear();
+        error.clear();
+        root.clear();
+        spare.clear();
+    }
+};
+
 /// Scratch of designs with interim looks.
 struct SequentialScratch {
     std::vector<std::uint32_t> active, still, offsets, row;
@@ -21,19 +35,11 @@ struct SequentialScratch {
 struct SamplingScratch {
     SequentialScratch sequential;
     std::vector<std::uint32_t> words;
-    std::vector<std::uint32_t> open;       // entries that a kernel leaves to exact scalar code
-    std::vector<double> error, root;       // of the entries in `open`: the draws behind them
-    std::vector<std::uint32_t> spare;
+    std::vector<std::uint32_t> open;              // entries whose word does not decide their size
+    OpenDraws draws, other_draws;
     std::vector<double> z, v, other_z, other_v;   // errors of studies
     std::vector<double> rate;                     // of the treated, per study
     std::vector<std::uint32_t> n, x, other_x;     // binomial counts
-
-    void clear_open() {
-        open.clear();
-        error.clear();
-        root.clear();
-        spare.clear();
-    }
 };
 
 /// Study number `study` of the lines `entities` in `literature`, under `seed`.
@@ -83,8 +89,8 @@ void count_cuts(const TestTable& table, const std::vector<std::size_t>& cuts, in
 /// Positive, reversed or inconclusive.
 Claim claim_of(double statistic, double critical, int sides);
 
-/// The chi-squared of entry scratch.open[k], which the squeeze left open: by the exact test and further draws.
+/// The chi-squared of entry open.entry[k]: by the exact test and further draws.
 double settled_chi(const StudyRound& round, Purpose test, Purpose again, const ChiColumns& chi, std::uint32_t row,
-                   std::size_t k, const SamplingScratch& scratch);
+                   std::size_t k, const OpenDraws& open);
 
 }  // namespace lacuna

@@ -32,6 +32,12 @@ void add_variates(const Design& design, const TestPlan& plan, TestTable& table) 
     }
 }
 
+/// What the statistic (the root of an F) is multiplied by.
+double to_estimate(const Design& design, const TestPlan& plan) {
+    if (design.test == Test::several_means) return std::sqrt(plan.df_effect / plan.participants);
+    return (design.estimate == EffectEstimate::g ? plan.correction : 1.0) / plan.noncentrality;
+}
+
 void add_row(const Design& design, const std::vector<Cut>& cuts, const TestPlan& plan, TestTable& table) {
     table.n1.push_back(plan.size.n1);
     table.n2.push_back(plan.size.n2);
@@ -39,7 +45,9 @@ void add_row(const Design& design, const std::vector<Cut>& cuts, const TestPlan&
     table.df.push_back(plan.df);
     table.df_effect.push_back(plan.df_effect);
     table.noncentrality.push_back(plan.noncentrality);
-    table.to_estimate.push_back((design.estimate == EffectEstimate::g ? plan.correction : 1.0) / plan.noncentrality);
+    table.size1.push_back(plan.size.n1);
+    table.size2.push_back(plan.size.n2);
+    table.to_estimate.push_back(to_estimate(design, plan));
     table.correction.push_back(plan.correction);
     table.critical.push_back(plan.critical);
     table.equivalence_critical.push_back(

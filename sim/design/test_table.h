@@ -37,11 +37,12 @@ struct TestTable {
     std::vector<std::uint32_t> participants;
     std::vector<double> df;                 // infinity where the variance is known
     std::vector<double> noncentrality;      // per unit of effect
-    std::vector<double> to_estimate;        // reported estimate = statistic * to_estimate, in designs of means
+    std::vector<double> to_estimate;        // reported estimate = statistic * to_estimate, in designs of one or two means; sqrt(F) * to_estimate
     std::vector<double> correction;         // small-sample correction J
     std::vector<double> critical;           // significant: statistic > critical (or < -critical, two-sided)
     std::vector<double> equivalence_critical;  // of a one-sided test of equivalence; what it bounds, the design knows
     std::vector<double> df_effect;          // of an F statistic's numerator
+    std::vector<double> size1, size2;       // n1 and n2, for vector code
     ChiColumns variance;                    // of the sample, over the true one; of a look's new observations
     ChiColumns other;                       // see sim/design/studies.h
     std::vector<std::vector<double>> cut_critical;  // [cut][row]: critical value of a p rule's step

@@ -28,6 +28,11 @@ public:
         return coefficient_[0] + x * b - last;
     }
 
+    /// For vector code: the series is in (1 / df - middle) stretch.
+    const std::vector<double>& coefficients() const { return coefficient_; }
+    double middle() const { return middle_; }
+    double stretch() const { return stretch_; }
+
 private:
     std::vector<double> coefficient_{0.0};
     double middle_ = 0.0, stretch_ = 0.0;  // of 1 / df

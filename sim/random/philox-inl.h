@@ -156,6 +156,12 @@ HWY_INLINE F2 spare_bits(const Block& b) {
     return as_doubles(mantissa) - all(0x1p52);
 }
 
+/// The same of its second uniform.
+HWY_INLINE F2 other_spare_bits(const Block& b) {
+    const U2 mantissa = (b.w2 & all(std::uint64_t{0xFFF})) | all(std::uint64_t{0x4330000000000000});
+    return as_doubles(mantissa) - all(0x1p52);
+}
+
 /// 1 / x for positive normal x, to about 1 ulp.
 HWY_INLINE F2 reciprocal(F2 x) {
 #if HWY_TARGET <= HWY_AVX3

@@ -15,27 +15,62 @@ namespace lacuna::HWY_NAMESPACE {
 namespace hn = hwy::HWY_NAMESPACE;
 
 /// Searches from 0, for n p <= 64 and p <= 1/2, all lanes in step: x is alike for all, so 1 / x is a scalar.
-/// `out` counts; columns hold whole vectors.
-void SearchFromZero(const double* n, const double* p, const double* u, std::size_t count, double* out) {
-    const hn::ScalableTag<double> f;
-    const std::size_t lanes = hn::Lanes(f);
+/// Four vectors at a time, whose chains of dependent operations overlap. `out` counts; columns hold as many
+/// whole groups.
+struct Search {
+    using F = hn::ScalableTag<double>;
+    using V = hn::Vec<F>;
+    V size, odds, chance, left, found;
+    hn::Mask<F> going;
+};
+
+HWY_INLINE Search begin(const double* n, const double* p, const double* u) {
+    const Search::F f;
     const auto one = hn::Set(f, 1.0);
-    for (std::size_t at = 0; at < count; at += lanes) {
-        const auto size = hn::LoadU(f, n + at), rate = hn::LoadU(f, p + at);
-        const auto odds = hn::Div(rate, hn::Sub(one, rate));
-        auto chance = hn::Exp(f, hn::Mul(size, hn::Log1p(f, hn::Neg(rate))));
-        auto left = hn::LoadU(f, u + at);
-        auto found = hn::Zero(f);
-        // A lane goes on while what is left is not below the chance of its x, and x < n.
-        auto going = hn::And(hn::Ge(left, chance), hn::Gt(size, hn::Zero(f)));
-        for (double x = 1.0; !hn::AllFalse(f, going); x += 1.0) {
-            left = hn::Sub(left, chance);
-            const auto above = hn::Sub(size, hn::Set(f, x - 1.0));
-            chance = hn::Mul(hn::Mul(chance, odds), hn::Mul(above, hn::Set(f, 1.0 / x)));
-            found = hn::IfThenElse(going, hn::Set(f, x), found);
-            going = hn::And(going, hn::And(hn::Ge(left, chance), hn::Gt(size, hn::Set(f, x))));
+    Search s;
+    const auto rate = hn::LoadU(f, p);
+    s.size = hn::LoadU(f, n);
+    s.odds = hn::Div(rate, hn::Sub(one, rate));
+    s.chance = hn::Exp(f, hn::Mul(s.size, hn::Log1p(f, hn::Neg(rate))));
+    s.left = hn::LoadU(f, u);
+    s.found = hn::Zero(f);
+    s.going = hn::And(hn::Ge(s.left, s.chance), hn::Gt(s.size, hn::Zero(f)));
+    return s;
+}
+
+/// A lane goes on while what is left of u is not below the chance of its x, and x < n.
+HWY_INLINE void step(Search& s, double x, double inverse) {
+    const Search::F f;
+    const auto now = hn::Set(f, x);
+    s.left = hn::Sub(s.left, s.chance);
+    const auto factor = hn::Mul(hn::Sub(s.size, hn::Set(f, x - 1.0)), hn::Mul(s.odds, hn::Set(f, inverse)));
+    s.chance = hn::Mul(s.chance, factor);
+    s.found = hn::IfThenElse(s.going, now, s.found);
+    s.going = hn::And(s.going, hn::And(hn::Ge(s.left, s.chance), hn::Gt(s.size, now)));
+}
+
+void SearchFromZero(const double* n, const double* p, const double* u, std::size_t count, double* out) {
+    const Search::F f;
+    const std::size_t lanes = hn::Lanes(f);
+    for (std::size_t at = 0; at < count; at += 4 * lanes) {
+        Search a = begin(n + at, p + at, u + at);
+        Search b = begin(n + at + lanes, p + at + lanes, u + at + lanes);
+        Search c = begin(n + at + 2 * lanes, p + at + 2 * lanes, u + at + 2 * lanes);
+        Search d = begin(n + at + 3 * lanes, p + at + 3 * lanes, u + at + 3 * lanes);
+        const auto any = [&]() HWY_ATTR {
+            return !hn::AllFalse(f, hn::Or(hn::Or(a.going, b.going), hn::Or(c.going, d.going)));
+        };
+        for (double x = 1.0; any(); x += 1.0) {
+            const double inverse = 1.0 / x;
+            step(a, x, inverse);
+            step(b, x, inverse);
+            step(c, x, inverse);
+            step(d, x, inverse);
         }
-        hn::StoreU(found, f, out + at);
+        hn::StoreU(a.found, f, out + at);
+        hn::StoreU(b.found, f, out + at + lanes);
+        hn::StoreU(c.found, f, out + at + 2 * lanes);
+        hn::StoreU(d.found, f, out + at + 3 * lanes);
     }
 }
 
@@ -118,7 +153,8 @@ double binomial_chance(std::uint32_t n, double p, std::uint32_t x) {
 
 void binomials(const std::uint32_t* n, const double* p, const double* u, std::size_t count, std::uint32_t* x) {
     constexpr std::size_t stretch = 512;
-    double size[stretch + 8], rate[stretch + 8], uniform[stretch + 8], found[stretch + 8];
+    constexpr std::size_t beyond = 32;  // four vectors
+    double size[stretch + beyond], rate[stretch + beyond], uniform[stretch + beyond], found[stretch + beyond];
     for (std::size_t begin = 0; begin < count; begin += stretch) {
         const std::size_t here = std::min(stretch, count - begin);
         for (std::size_t i = 0; i < here; ++i) {
@@ -128,9 +164,9 @@ void binomials(const std::uint32_t* n, const double* p, const double* u, std::si
             rate[i] = smaller;
             uniform[i] = u[begin + i];
         }
-        std::fill(size + here, size + here + 8, 0.0);
-        std::fill(rate + here, rate + here + 8, 0.0);
-        std::fill(uniform + here, uniform + here + 8, 0.0);
+        std::fill(size + here, size + here + beyond, 0.0);
+        std::fill(rate + here, rate + here + beyond, 0.0);
+        std::fill(uniform + here, uniform + here + beyond, 0.0);
         HWY_DYNAMIC_DISPATCH(SearchFromZero)(size, rate, uniform, here, found);
         for (std::size_t i = 0; i < here; ++i) {
             const std::size_t at = begin + i;

@@ -22,7 +22,7 @@ constexpr std::size_t block = 8192;
 struct Case {
     Design design;
     double effect;
-    int pairs;  // of normal and chi-squared columns behind a study; 0: two binomials
+    int pairs;  // 1: a normal and a chi-squared (as often as there are looks); 2: another chi-squared; 0: two binomials
 };
 
 Case case_of(Test test, double effect, int pairs) {
@@ -69,9 +69,14 @@ double seconds_of(const auto& job) {
 
 /// The variates alone, drawn and thrown away.
 double bare(const Case& its, const StudyRound& round, const TestTable& table, SamplingScratch& scratch, Columns& c) {
-    for (int pair = 0; pair < its.pairs; ++pair) {
-        draw_errors(round, pair % 2 ? study_other_errors : study_errors, pair == 1 && !table.other.c.empty() && its.pairs == 2 ? table.other : table.variance,
-                    c.row.data(), scratch, c.z.data(), c.v.data());
+    if (its.pairs == 2 && its.design.groups == 4) {
+        draw_errors(round, table.variance, c.row.data(), scratch, c.z.data(), c.v.data());
+        uniforms(round.key, round.address(Purpose::study_other_data), round.entities, c.z.data());
+    } else if (its.pairs == 2) {
+        draw_two_errors(round, table.variance, table.other, c.row.data(), scratch, c.z.data(), c.v.data(), c.df.data());
+    }
+    for (int look = 0; its.pairs != 2 && look < its.pairs; ++look) {
+        draw_errors(round, table.variance, c.row.data(), scratch, c.z.data(), c.v.data());
     }
     for (int group = 0; its.pairs == 0 && group < 2; ++group) {
         uniforms(round.key, round.address(group ? Purpose::study_other_data : Purpose::study_data), round.entities, c.z.data());

@@ -1,10 +1,10 @@
-// Shared by the kernels that draw chi-squared variates: gathers by row, and the squeeze of
-// sim/variate/gamma.h with the list of entries that it leaves open. Included once per vector target.
-#if defined(LACUNA_SQUEEZE_INL_H) == defined(HWY_TARGET_TOGGLE)
-#ifdef LACUNA_SQUEEZE_INL_H
-#undef LACUNA_SQUEEZE_INL_H
+// Shared by the kernels of studies: gathers by row, claims, and the squeeze of sim/variate/gamma.h with the
+// list of entries that it leaves open. Included once per vector target.
+#if defined(LACUNA_STUDIES_INL_H) == defined(HWY_TARGET_TOGGLE)
+#ifdef LACUNA_STUDIES_INL_H
+#undef LACUNA_STUDIES_INL_H
 #else
-#define LACUNA_SQUEEZE_INL_H
+#define LACUNA_STUDIES_INL_H
 #endif
 
 #include "sim/design/sampling.h"
@@ -32,7 +32,7 @@ HWY_INLINE F2 gather(const std::vector<double>& column, I2 row) {
 
 /// Lists the entries of 2 * Lanes from `at` on (below `count`) whose draw x, with y = c x, the squeeze does
 /// not accept, with the draws behind them.
-HWY_INLINE void list_open(F2 error, F2 x, F2 y, F2 spare, std::size_t at, std::size_t count, SamplingScratch& scratch) {
+HWY_INLINE void list_open(F2 error, F2 x, F2 y, F2 spare, std::size_t at, std::size_t count, OpenDraws& open) {
     const F64 f;
     const std::size_t lanes = hn::Lanes(f);
     // The squeeze's bound: d (3/4 y^4 + [y < 0] 6/5 |y|^5) with d = 1 / (9 c^2), so d y^2 = x^2 / 9.
@@ -52,11 +52,46 @@ HWY_INLINE void list_open(F2 error, F2 x, F2 y, F2 spare, std::size_t at, std::s
     store(spare, spares);
     for (std::size_t lane = 0; lane < 2 * lanes && at + lane < count; ++lane) {
         if (bits[lane / lanes][0] >> (lane % lanes) & 1) continue;
-        scratch.open.push_back(static_cast<std::uint32_t>(at + lane));
-        scratch.error.push_back(errors[lane]);
-        scratch.root.push_back(roots[lane]);
-        scratch.spare.push_back(static_cast<std::uint32_t>(spares[lane]));
+        open.entry.push_back(static_cast<std::uint32_t>(at + lane));
+        open.error.push_back(errors[lane]);
+        open.root.push_back(roots[lane]);
+        open.spare.push_back(static_cast<std::uint32_t>(spares[lane]));
     }
+}
+
+/// Claims of 2 * Lanes studies: 1 above the critical value, 2 below its negative when the test has two sides,
+/// else 3 where `equivalent`.
+struct Mask2 {
+    hn::Mask<F64> a, b;
+};
+HWY_INLINE Mask2 none() {
+    const VecF zero = hn::Zero(F64());
+    return {hn::Lt(zero, zero), hn::Lt(zero, zero)};
+}
+HWY_INLINE Mask2 less(F2 x, F2 y) { return {hn::Lt(x.a, y.a), hn::Lt(x.b, y.b)}; }
+HWY_INLINE F2 absolute(F2 x) { return {hn::Abs(x.a), hn::Abs(x.b)}; }
+
+HWY_INLINE void store_claims(VecF t, VecF critical, bool two_sided, hn::Mask<F64> equivalent, std::uint8_t* claim) {
+    const I64 i;
+    VecI code = hn::IfThenElseZero(hn::RebindMask(i, equivalent), hn::Set(i, 3));
+    if (two_sided) code = hn::IfThenElse(hn::RebindMask(i, hn::Lt(t, hn::Neg(critical))), hn::Set(i, 2), code);
+    code = hn::IfThenElse(hn::RebindMask(i, hn::Gt(t, critical)), hn::Set(i, 1), code);
+    const hn::Rebind<std::uint8_t, F64> bytes;
+    hn::StoreU(hn::TruncateTo(bytes, hn::BitCast(U64(), code)), bytes, claim);
+}
+
+HWY_INLINE void store_claims(F2 t, F2 critical, bool two_sided, Mask2 equivalent, std::uint8_t* claim) {
+    store_claims(t.a, critical.a, two_sided, equivalent.a, claim);
+    store_claims(t.b, critical.b, two_sided, equivalent.b, claim + hn::Lanes(F64()));
+}
+
+/// sqrt(x) for positive normal x.
+HWY_INLINE F2 square_root(F2 x) { return x * reciprocal_sqrt(x); }
+
+/// Calls f(at, rows) for every 2 * Lanes entries of a column of studies.
+template <class F>
+HWY_INLINE void for_studies(std::size_t count, const std::uint32_t* row, F f) {
+    for (std::size_t at = 0; at < count; at += 2 * hn::Lanes(F64())) f(at, load_rows(row + at));
 }
 
 HWY_INLINE U2 entity_blocks(const StudyRound& round, std::size_t at, std::size_t n) {
