@@ -138,7 +138,7 @@ std::uint32_t sure_row(const TestTable& table, const TestTable::Kind& kind, std:
 }
 
 std::uint32_t pick_row(const TestTable& table, const TestTable::Kind& kind, double u) {
-    const double x = u * kind.sizes;
+    const double x = u * kind.sizes;  // below kind.sizes, as u is at most 1 - 2^-53
     const auto its = kind.first_row + static_cast<std::uint32_t>(x);
     return x - std::floor(x) < table.keep[its] ? its : static_cast<std::uint32_t>(table.other_row[its]);
 }

@@ -230,7 +230,8 @@ void words(StreamKey key, Address address, Entities entities, std::uint32_t* out
 double refined(StreamKey key, Address address, std::uint64_t entity, std::uint32_t word, int bits) {
     address.index += static_cast<std::uint32_t>(address.purpose);
     address.purpose = Purpose::refinement;
-    return std::ldexp(word + Stream(key, address, entity).uniform(), -bits);
+    // A uniform of 53 bits behind the word's may round up to 1.
+    return std::fmin(std::ldexp(word + Stream(key, address, entity).uniform(), -bits), 1.0 - 0x1p-53);
 }
 
 std::string vector_target() { return HWY_DYNAMIC_DISPATCH(TargetName)(); }

@@ -1,6 +1,9 @@
 #include "sim/variate/permutation.h"
 
+#include <algorithm>
 #include <bit>
+#include <numeric>
+#include <utility>
 
 namespace lacuna {
 
@@ -15,13 +18,35 @@ std::uint32_t mixed(std::uint32_t x) {
     return x ^ x >> 16;
 }
 
+/// A whole number below `bound`, every one equally often: by the high half of a product, drawn again where the
+/// low half would favour some (Lemire 2019, "Fast random integer generation in an interval", ACM TOMACS 29).
+std::uint32_t below(std::uint32_t bound, Stream& stream) {
+    const std::uint32_t least = static_cast<std::uint32_t>(-bound) % bound;
+    for (;;) {
+        const std::uint64_t product = std::uint64_t{stream()} * bound;
+        if (static_cast<std::uint32_t>(product) >= least) return static_cast<std::uint32_t>(product >> 32);
+    }
+}
+
 }  // namespace
 
 Permutation::Permutation(std::uint64_t size, Stream stream) : size_(size) {
-    const unsigned bits = size < 2 ? 2u : static_cast<unsigned>(std::bit_width(size - 1));
-    low_bits_ = bits < 2 ? 1u : bits / 2;
-    high_bits_ = bits < 2 ? 1u : bits - low_bits_;
+    if (size <= largest_stored) {
+        shuffle(stream);
+        return;
+    }
+    const auto bits = static_cast<unsigned>(std::bit_width(size - 1));
+    low_bits_ = bits / 2;
+    high_bits_ = bits - low_bits_;
     for (std::uint32_t& key : keys_) key = stream();
+}
+
+void Permutation::shuffle(Stream& stream) {
+    stored_.resize(size_);
+    std::iota(stored_.begin(), stored_.end(), 0u);
+    for (auto left = static_cast<std::uint32_t>(size_); left > 1; --left) {
+        std::swap(stored_[left - 1], stored_[below(left, stream)]);
+    }
 }
 
 std::uint64_t Permutation::once(std::uint64_t x) const {
@@ -30,7 +55,7 @@ std::uint64_t Permutation::once(std::uint64_t x) const {
     auto high = static_cast<std::uint32_t>(x >> low_bits_);
     const std::uint32_t low_mask = (1u << low_bits_) - 1u;
     const std::uint32_t high_mask = (1u << high_bits_) - 1u;
-    for (unsigned round = 0; round < 6; round += 2) {
+    for (unsigned round = 0; round < rounds; round += 2) {
         low ^= mixed(high ^ keys_[round]) & low_mask;
         high ^= mixed(low ^ keys_[round + 1]) & high_mask;
     }
@@ -39,6 +64,10 @@ std::uint64_t Permutation::once(std::uint64_t x) const {
 
 void Permutation::images(std::uint64_t first, std::size_t count, std::vector<std::uint64_t>& out) const {
     out.resize(count);
+    if (!stored_.empty()) {
+        std::copy_n(stored_.begin() + static_cast<std::ptrdiff_t>(first), count, out.begin());
+        return;
+    }
     for (std::size_t i = 0; i < count; ++i) out[i] = once(first + i);
     for (std::size_t i = 0; i < count; ++i) {
         while (out[i] >= size_) out[i] = once(out[i]);
