@@ -42,10 +42,11 @@ void check(const LookSchedule& schedule) {
     throw InputError(std::move(fault));
 }
 
-/// What may be spent by information t.
+/// What each side may have spent by information t.
 double spent(const LookSchedule& schedule, double t) {
-    if (schedule.kind == BoundaryKind::spending_pocock) return schedule.alpha * std::log1p((M_E - 1.0) * t);
-    return 2.0 * normal_upper(normal_upper_quantile(0.5 * schedule.alpha) / std::sqrt(t));
+    const double level = schedule.alpha / schedule.sides;
+    if (schedule.kind == BoundaryKind::spending_pocock) return level * std::log1p((M_E - 1.0) * t);
+    return 2.0 * normal_upper(normal_upper_quantile(0.5 * level) / std::sqrt(t));
 }
 
 /// Look by look: the bound that spends what is new.
@@ -55,7 +56,7 @@ std::vector<double> spending_bounds(const LookSchedule& schedule) {
     double before = 0.0;
     for (const double t : schedule.information) {
         const double now = spent(schedule, t);
-        const double a_side = (now - before) / schedule.sides;
+        const double a_side = now - before;
         const auto excess = [&](double c) { return density.above(t, c * std::sqrt(t), 0.0) - a_side; };
         // Nothing representable to spend: no bound that can be reached.
         bounds.push_back(a_side < 1e-300 || excess(37.0) > 0.0 ? 37.0 : root(excess, -10.0, 37.0));

@@ -12,8 +12,8 @@ enum class BoundaryKind {
     constant_level,          // every look at the level itself, uncorrected
     pocock,                  // one bound for all looks (Pocock 1977, Biometrika 64:191)
     obrien_fleming,          // bounds falling as 1 / sqrt(information) (O'Brien & Fleming 1979, Biometrics 35:549)
-    spending_pocock,         // Lan & DeMets (1983, Biometrika 70:659): alpha log(1 + (e - 1) t) spent by t,
-    spending_obrien_fleming  // or 2 (1 - Phi(z_{alpha/2} / sqrt(t))); two-sided tests spend half of each a side
+    spending_pocock,         // Lan & DeMets (1983, Biometrika 70:659): a log(1 + (e - 1) t) spent by t,
+    spending_obrien_fleming  // or 2 (1 - Phi(z_{a/2} / sqrt(t))), a = alpha / sides on each side
 };
 
 /// A plan of looks at the shares `information` of the whole, ascending, the last 1.
