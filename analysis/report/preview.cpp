@@ -100,19 +100,25 @@ std::string expected_text(const Preview& preview) {
     std::string text = "\nExact expected values\n\n";
     TextTable table;
     table.header = {"metric"};
-    table.header.insert(table.header.end(), preview.regimes.begin(), preview.regimes.end());
+    std::vector<std::size_t> column(preview.regimes.size(), 0);  // of each regime; 0: it has no exact values
+    for (std::size_t r = 0; r < preview.regimes.size(); ++r) {
+        const auto its = [&](const Result& result) { return result.regime == r && result.estimate.value; };
+        if (std::none_of(preview.expected.begin(), preview.expected.end(), its)) continue;
+        column[r] = table.header.size();
+        table.header.push_back(preview.regimes[r]);
+    }
     for (Scope scope : {Scope::conducted, Scope::written, Scope::published}) {
         bool headed = false;
         for (std::size_t at = 0; at < preview.expected.size();) {
             const Result& first = preview.expected[at];
-            std::vector<std::string> row(1 + preview.regimes.size(), missing_sign);
+            std::vector<std::string> row(table.header.size(), missing_sign);
             row[0] = first.stratum == "all" ? fmt::format("  {}", first.metric)
                                             : fmt::format("  {} {}", first.metric, first.stratum);
             for (; at < preview.expected.size(); ++at) {
                 const Result& each = preview.expected[at];
                 if (each.metric != first.metric || each.scope != first.scope || each.stratum != first.stratum)
                     break;
-                if (each.estimate.value) row[1 + each.regime] = show_number(*each.estimate.value, 6);
+                if (each.estimate.value) row[column[each.regime]] = show_number(*each.estimate.value, 6);
             }
             if (first.scope != scope) continue;
             if (!headed) table.rows.push_back({std::string(scope_names[static_cast<std::size_t>(scope)])});

@@ -56,6 +56,17 @@ private:
     std::vector<Fault> faults_;
 };
 
+/// Whether exactly 0 is drawn with a chance.
+bool may_be_zero(const Distribution& effect) {
+    if (effect.clamp && (effect.min == 0.0 || effect.max == 0.0)) return true;
+    if (effect.family == Family::fixed) return effect.first == 0.0;
+    if (effect.family == Family::poisson) return lowest_draw(effect) <= 0.0;
+    for (std::size_t i = 0; effect.family == Family::discrete && i < effect.values.size(); ++i) {
+        if (effect.values[i] == 0.0 && effect.weights[i] > 0.0) return true;
+    }
+    return false;
+}
+
 /// Effects that the design's scale knows, and that sizes can be planned for.
 void demand_possible_effects(const Science& science, Limits& limits) {
     const Test test = science.design.test;
@@ -67,6 +78,13 @@ void demand_possible_effects(const Science& science, Limits& limits) {
                   "bound it with min and max");
     const auto follows_truth = [](const LabKind& lab) { return lab.size.for_each_question() && lab.size.effect.is_true; };
     const bool never = lowest_draw(science.field.effect) == 0.0 && highest_draw(science.field.effect) == 0.0;
+    const auto scaled_by_truth = [](const LabKind& lab) {
+        return lab.size.kind == SizePlan::Kind::exact_power && lab.size.effect.is_true;
+    };
+    limits.demand(never || !may_be_zero(science.field.effect) ||
+                      std::none_of(science.labs.begin(), science.labs.end(), scaled_by_truth),
+                  "field.effect", "may be exactly 0, where no noise gives the exact power that is asked for",
+                  "leave 0 out of its values");
     limits.demand(!never || std::none_of(science.labs.begin(), science.labs.end(), follows_truth), "field.effect",
                   "is 0, and sizes are planned for true effects: no n gives power for no effect",
                   "plan for a number instead of \"true\"");

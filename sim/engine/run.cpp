@@ -5,7 +5,6 @@
 
 #include "sim/engine/scheduler.h"
 #include "sim/literature/block.h"
-#include "sim/literature/expected_studies.h"
 
 namespace lacuna {
 
@@ -80,7 +79,7 @@ public:
         stretches_ = (blocks_.count + blocks_a_task - 1) / blocks_a_task;
         progress_.literatures_total = scenario.run.literatures;
         progress_.studies_total =
-            static_cast<double>(scenario.run.literatures - options.first_literature) * all_studies();
+            static_cast<double>(scenario.run.literatures - options.first_literature) * blocks_.studies_together;
     }
 
     RunOutcome run() {
@@ -99,12 +98,6 @@ public:
 
 private:
     bool whole() const { return blocks_.count == 1; }
-
-    double all_studies() const {
-        double sum = 0.0;
-        for (const PreparedScience& science : prepared_.sciences) sum += expected_studies(science.science);
-        return sum;
-    }
 
     std::vector<Tally> new_tallies() const {
         std::vector<Tally> tallies;

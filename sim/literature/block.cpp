@@ -22,11 +22,13 @@ BlockRange Blocks::range(std::uint64_t block) const {
 }
 
 Blocks cut_into_blocks(const Scenario& scenario) {
-    Blocks blocks{0, 0, 1, 0, 0.0};
+    Blocks blocks{0, 0, 1, 0, 0.0, 0.0};
     for (const std::size_t first : group_by_science(scenario.regimes).firsts) {
         const Science& science = scenario.regimes[first].science;
         blocks.questions = std::max(blocks.questions, science.field.questions);
-        blocks.studies_a_literature = std::max(blocks.studies_a_literature, expected_studies(science));
+        const double studies = expected_studies(science);
+        blocks.studies_a_literature = std::max(blocks.studies_a_literature, studies);
+        blocks.studies_together += studies;
     }
     const double a_question = blocks.studies_a_literature / static_cast<double>(blocks.questions);
     const double wanted = std::clamp(studies_wanted / std::max(a_question, 1e-9), 32.0, double(most_questions));

@@ -18,6 +18,7 @@ struct Blocks {
     std::uint64_t parts;            // blocks that share these questions, each with a part of their lines
     std::uint64_t count;            // blocks in a literature
     double studies_a_literature;    // expected, of the science with the most
+    double studies_together;        // of all sciences
 
     BlockRange range(std::uint64_t block) const;
 };

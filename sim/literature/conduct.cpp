@@ -141,7 +141,10 @@ void draw_thetas(const PreparedScience& science, const StudyRound& round, bool e
     };
     switch (science.science.design.test) {
         case Test::correlation:  // on the scale of Fisher's z
-            return move([](double rho, double by) { return std::tanh(std::atanh(rho) + by); });
+            return move([](double rho, double by) {
+                constexpr double most = 1.0 - 0x1p-52;  // tanh rounds to 1, which no data have
+                return std::clamp(std::tanh(std::atanh(rho) + by), -most, most);
+            });
         case Test::several_means:  // an f has no sign
             return move([](double f, double by) { return std::fabs(f + by); });
         case Test::two_means:

@@ -5,6 +5,7 @@
 
 #include "sim/design/design.h"
 #include "sim/stats/distribution.h"
+#include "sim/stats/student_t.h"
 
 namespace lacuna {
 
@@ -32,30 +33,45 @@ double mean_length(const LineRule& rule, double p) {
     return length;
 }
 
-/// Chance of a finding about a question of this effect, averaged over sizes (by a few of their quantiles)
-/// and over the studies' deviations. Coarse: it only predicts how long a run takes.
-double finding_chance(const Science& science, const IntegerDistribution& sizes, double effect) {
-    std::vector<std::uint32_t> some;
+/// Studies of a few sizes that stand for all: quantiles of the size, as if there were no interim looks.
+std::vector<TestPlan> some_plans(Design design, const IntegerDistribution& sizes) {
+    design.looks = Looks{};
+    std::vector<TestPlan> some;
     double below = 0.0;
-    for (std::size_t i = 0, next = 0; i < sizes.chance.size() && next < 9; ++i) {
+    for (std::size_t i = 0, next = 0; i < sizes.chance.size() && next < 5; ++i) {
         below += sizes.chance[i];
-        for (; next < 9 && below >= (static_cast<double>(next) + 0.5) / 9.0; ++next) {
-            some.push_back(static_cast<std::uint32_t>(sizes.first + static_cast<long>(i)));
+        for (; next < 5 && below >= (static_cast<double>(next) + 0.5) / 5.0; ++next) {
+            some.push_back(describe(design, static_cast<std::uint32_t>(sizes.first + static_cast<long>(i))));
         }
     }
+    return some;
+}
+
+/// Chances of significant results, quickly: where the exact ones take long, by a noncentral t next to them.
+Tails rough_tails(Design design, const TestPlan& plan, double effect) {
+    design.looks = Looks{};
+    if (design.test == Test::several_means || design.test == Test::two_proportions) return tails(design, plan, effect);
+    const double slope = design.test == Test::correlation ? effect / std::sqrt(1.0 - effect * effect) : effect;
+    const double noncentrality = slope * plan.noncentrality;
+    return {noncentral_t_upper(plan.critical, plan.df, noncentrality),
+            design.sides == 2 ? noncentral_t_lower(-plan.critical, plan.df, noncentrality) : 0.0};
+}
+
+/// Chance of a finding about a question of this effect, averaged over sizes and over the studies' deviations.
+double finding_chance(const Science& science, const std::vector<TestPlan>& plans, double effect) {
     Distribution deviation = Distribution::fixed(0.0);
     if (science.field.heterogeneity > 0.0)
         deviation = {Family::normal, 0.0, science.field.heterogeneity, -infinity, infinity, false, {}, {}};
+    const bool either = science.design.findings == Findings::either;
+    const double most = science.design.test == Test::correlation ? 0.999 : infinity;
     double sum = 0.0;
-    for (const Node& node : quadrature(deviation, 8)) {
-        for (const std::uint32_t n : some) {
-            const TestPlan plan = describe(science.design, n);
-            const bool either = science.design.findings == Findings::either;
-            sum += node.weight * (either ? power(science.design, plan, effect + node.x)
-                                         : power_predicted(science.design, plan, effect + node.x));
+    for (const Node& node : quadrature(deviation, 4)) {
+        for (const TestPlan& plan : plans) {
+            const Tails its = rough_tails(science.design, plan, std::clamp(effect + node.x, -most, most));
+            sum += node.weight * (its.predicted + (either ? its.reversed : 0.0));
         }
     }
-    return some.empty() ? 0.0 : std::clamp(sum / static_cast<double>(some.size()), 0.0, 1.0);
+    return plans.empty() ? 0.0 : std::clamp(sum / static_cast<double>(plans.size()), 0.0, 1.0);
 }
 
 double mean_studies(const Science& science, const LabKind& kind) {
@@ -65,11 +81,11 @@ double mean_studies(const Science& science, const LabKind& kind) {
         return rate * mean_length(kind.studies, kind.size.power) +
                (1.0 - rate) * mean_length(kind.studies, science.design.alpha);
     }
-    const IntegerDistribution sizes = size_distribution(science.design, kind.size);
+    const std::vector<TestPlan> plans = some_plans(science.design, size_distribution(science.design, kind.size));
     const auto over = [&](const Distribution& effects) {
         double sum = 0.0;
-        for (const Node& node : quadrature(effects, 16)) {
-            sum += node.weight * mean_length(kind.studies, finding_chance(science, sizes, node.x));
+        for (const Node& node : quadrature(effects, 8)) {
+            sum += node.weight * mean_length(kind.studies, finding_chance(science, plans, node.x));
         }
         return sum;
     };

@@ -6,7 +6,7 @@
 namespace lacuna {
 
 /// The expected number of studies of one literature under `science`: exact for fixed lines; for
-/// until-rules by a coarse quadrature, good to about a percent.
+/// until-rules by a coarse quadrature, good to a few percent.
 double expected_studies(const Science& science);
 
 }  // namespace lacuna
