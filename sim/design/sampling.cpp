@@ -39,9 +39,9 @@ HWY_INLINE void student_studies(const TestTable& table, bool two_sided, Pair dat
     list_open(error, x, y, spare, at, count, scratch.draws);
 }
 
-/// All studies of a round. `student`: t, else z. Columns must be readable and writable up to the next
+/// All studies of a round. Columns must be readable and writable up to the next
 /// multiple of 2 * Lanes entries.
-void Studies(const StudyRound& round, bool student, bool two_sided, const TestTable& table, SamplingScratch& scratch,
+void Studies(const StudyRound& round, bool two_sided, const TestTable& table, SamplingScratch& scratch,
              const StudyBatch& batch) {
     const RoundKeys keys(round.key);
     const std::size_t lanes = 2 * hn::Lanes(F64());
@@ -56,13 +56,7 @@ void Studies(const StudyRound& round, bool student, bool two_sided, const TestTa
         const Block bits = next;
         if (at + lanes < count) next = draw(at + lanes);
         const Pair data = normal_pair(bits);
-        if (student) {
-            student_studies(table, two_sided, data, spare_bits(bits), batch, at, count, scratch);
-            continue;
-        }
-        const I2 row = load_rows(batch.row + at);
-        const F2 z = fma(load(batch.theta + at), gather(table.noncentrality, row), data.first);
-        store_studies(table, two_sided, z, row, batch, at);
+        student_studies(table, two_sided, data, spare_bits(bits), batch, at, count, scratch);
     }
 }
 
@@ -206,9 +200,8 @@ void draw_sizes(const StudyRound& round, const TestTable& table, const std::uint
 
 void draw_simple_studies(const StudyRound& round, const Design& design, const TestTable& table,
                          SamplingScratch& scratch, StudyBatch batch) {
-    const bool student = design.test != Test::known_variance;
     scratch.draws.clear();
-    HWY_DYNAMIC_DISPATCH(Studies)(round, student, design.sides == 2, table, scratch, batch);
+    HWY_DYNAMIC_DISPATCH(Studies)(round, design.sides == 2, table, scratch, batch);
     settle_open(round, design, table, scratch, batch);
 }
 

@@ -20,7 +20,8 @@ void draw_studies(const StudyRound& round, const Design& design, const TestTable
         case Test::one_mean:
         case Test::known_variance:
             if (design.welch) return draw_welch_studies(round, design, table, scratch, batch);
-            if (design.equivalence.tested()) return draw_mean_studies(round, design, table, scratch, batch);
+            if (design.equivalence.tested() || design.test == Test::known_variance)
+                return draw_mean_studies(round, design, table, scratch, batch);
             return draw_simple_studies(round, design, table, scratch, batch);
         case Test::correlation:
             return draw_correlation_studies(round, design, table, scratch, batch);

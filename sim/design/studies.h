@@ -5,12 +5,12 @@
 
 namespace lacuna {
 
-/// One or two means by Student's t or the z test: t = (Z + noncentrality) / sqrt(chi-squared / df), numerator
+/// One or two means by Student's t: t = (Z + noncentrality) / sqrt(chi-squared / df), numerator
 /// and variance independent (Johnson, Kotz & Balakrishnan 1995, ch. 31). The fast path: no equivalence test.
 void draw_simple_studies(const StudyRound& round, const Design& design, const TestTable& table,
                          SamplingScratch& scratch, StudyBatch batch);
 
-/// The same with two one-sided tests after a result that is not significant.
+/// The same, or the z test, with two one-sided tests after a result that is not significant.
 void draw_mean_studies(const StudyRound& round, const Design& design, const TestTable& table,
                        SamplingScratch& scratch, StudyBatch batch);
 

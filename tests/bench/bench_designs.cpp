@@ -69,13 +69,15 @@ double seconds_of(const auto& job) {
 
 /// The variates alone, drawn and thrown away.
 double bare(const Case& its, const StudyRound& round, const TestTable& table, SamplingScratch& scratch, Columns& c) {
-    if (its.pairs == 2 && its.design.groups == 4) {
+    if (its.design.test == Test::known_variance) {
+        normals(round.key, round.address(Purpose::study_data), round.entities, c.z.data());
+    } else if (its.pairs == 2 && its.design.groups == 4) {
         draw_errors(round, table.variance, c.row.data(), scratch, c.z.data(), c.v.data());
         uniforms(round.key, round.address(Purpose::study_other_data), round.entities, c.z.data());
     } else if (its.pairs == 2) {
         draw_two_errors(round, table.variance, table.other, c.row.data(), scratch, c.z.data(), c.v.data(), c.df.data());
     }
-    for (int look = 0; its.pairs != 2 && look < its.pairs; ++look) {
+    for (int look = 0; its.pairs != 2 && its.design.test != Test::known_variance && look < its.pairs; ++look) {
         draw_errors(round, table.variance, c.row.data(), scratch, c.z.data(), c.v.data());
     }
     for (int group = 0; its.pairs == 0 && group < 2; ++group) {

@@ -87,7 +87,7 @@ TEST_CASE("Power with looks and stops for futility is the recursion's, known var
 }
 
 TEST_CASE("Two means with looks against participants: claims, sizes and estimates", "[validation]") {
-    const std::size_t studies = 300000;
+    const std::size_t studies = 100000;
     Design design = with_looks(Test::two_means, Looks::Boundary::pocock, 3, 2, 13);  // looks at 4, 9 and 13 a group
     design.looks.futility = 0.3;
     design.allocation = 1.5;
