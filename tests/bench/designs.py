@@ -41,3 +41,26 @@ for name, text in DESIGNS.items():
     ratio = statistics.median(n / o for n, o in zip(numpy, own))
     over = statistics.median(o / b for o, b in zip(own, bare))
     print(f"| {text} | {statistics.median(own):.1f} | {over:.2f} | {statistics.median(numpy):.0f} | {ratio:.1f} |", flush=True)
+
+print("\n# Cost of a p-value\n")
+print("Upper tails on one thread, ns a value; SciPy is `scipy.stats`, Boost is Boost.Math (`bench_tails`, `tails_scipy.py`).\n")
+print("| law | ns a value | Boost over this | SciPy over this |")
+print("| --- | ---: | ---: | ---: |")
+
+
+def table(lines, column):
+    rows = {}
+    for line in lines:
+        for law in ("normal", "t", "F, df1 = 3", "F, df1 = 4", "F, df1 = 50"):
+            if line.startswith(law + " "):
+                rows[law] = line[len(law):].split()[column]
+    return rows
+
+
+ours = subprocess.run([tails], check=True, capture_output=True, text=True, env=environment).stdout.splitlines()
+theirs = subprocess.run([sys.executable, os.path.join(here, "tails_scipy.py")], check=True, capture_output=True, text=True,
+                        env=environment).stdout.splitlines()
+own, boost, scipy = table(ours, 0), table(ours, 1), table(theirs, 1)
+for law in own:
+    a, b, c = float(own[law]), float(boost[law]), float(scipy[law])
+    print(f"| {law} | {a:.1f} | {b / a:.0f} | {c / a:.0f} |")

@@ -233,3 +233,48 @@ TEST_CASE("At its bound an exact equivalence test claims with its alpha", "[desi
     design.equivalence = {0.5, 0.05};  // far from the other bound
     CHECK(z(sampled(design, 0.5).share(Claim::equivalent), 0.05) < 4);
 }
+
+TEST_CASE("Means and variances of statistics and estimates are the theoretical ones", "[design]") {
+    const auto moments = [](const std::vector<double>& column, double mean, double variance) {
+        oracle::Sample sample;
+        double fourth = 0.0;
+        for (const double x : column) sample.add(x);
+        for (const double x : column) fourth += std::pow(x - sample.mean(), 4) / double(studies);
+        CHECK(std::fabs(oracle::z_score(sample.mean(), mean, sample.standard_error())) < 4);
+        const double error = std::sqrt((fourth - sample.variance() * sample.variance()) / double(studies));
+        if (variance > 0.0) CHECK(std::fabs(oracle::z_score(sample.variance(), variance, error)) < 4);
+    };
+    // Noncentral t and F: Johnson, Kotz & Balakrishnan (1995), eqs. 31.15, 30.4.
+    const auto check_t = [&](const Design& design, double effect, double df, double noncentrality) {
+        const double ratio = std::exp(std::lgamma((df - 1) / 2) - std::lgamma(df / 2)) * std::sqrt(df / 2);
+        const double mean = noncentrality * ratio;
+        moments(sampled(design, effect).statistic, mean, df / (df - 2) * (1 + noncentrality * noncentrality) - mean * mean);
+    };
+    Design two = design_of(Test::two_means, 9);
+    two.allocation = 2.0;
+    check_t(two, 0.5, 25, 0.5 * std::sqrt(6.0));
+    check_t(design_of(Test::one_mean, 14), 0.4, 13, 0.4 * std::sqrt(14.0));
+    for (const std::uint32_t groups : {3u, 4u, 6u}) {
+        Design design = design_of(Test::several_means, 8);
+        design.groups = groups;
+        const double a = groups - 1.0, b = groups * 7.0, lambda = groups * 8 * 0.09;
+        const double mean = b * (a + lambda) / (a * (b - 2));
+        const double variance = 2 * (b / a) * (b / a) * ((a + lambda) * (a + lambda) + (a + 2 * lambda) * (b - 2)) / ((b - 2) * (b - 2) * (b - 4));
+        moments(sampled(design, 0.3).statistic, mean, variance);
+    }
+    // E[r] = 2 / (n - 1) (Gamma(n/2) / Gamma((n-1)/2))^2 rho 2F1(1/2, 1/2; (n+1)/2; rho^2) (the same, eq. 32.13).
+    const double n = 10, rho = 0.6;
+    double series = 1.0, term = 1.0;
+    for (int k = 0; k < 200; ++k) {
+        term *= (0.5 + k) * (0.5 + k) / ((n + 1) / 2 + k) / (k + 1) * rho * rho;
+        series += term;
+    }
+    const double gammas = std::exp(std::lgamma(n / 2) - std::lgamma((n - 1) / 2));
+    moments(sampled(design_of(Test::correlation, 10), rho).estimate, 2 / (n - 1) * gammas * gammas * rho * series, 0.0);
+    moments(sampled(design_of(Test::known_variance, 7), 0.2).statistic, 0.2 * std::sqrt(7.0), 1.0);
+    // Welch: the numerator over the pooled deviation is Hedges' d, whatever the test.
+    Design welch = design_of(Test::two_means, 9);
+    welch.welch = true;
+    const double ratio = std::exp(std::lgamma(7.5) - std::lgamma(8.0)) * std::sqrt(8.0);
+    moments(sampled(welch, 0.5).estimate, 0.5 * ratio, 0.0);
+}

@@ -54,9 +54,10 @@ Drawn draw(const Science& science, const TestTable& table, Entities entities, do
     Drawn d{std::vector<std::uint32_t>(room), std::vector<double>(room, effect), std::vector<double>(room),
             std::vector<double>(room), std::vector<std::uint8_t>(room)};
     SamplingScratch scratch;
+    std::vector<double> df(room), error(room);
     draw_sizes(round, table, nullptr, nullptr, scratch, d.row.data());
     draw_studies(round, science.design, table, scratch,
-                 {d.row.data(), d.theta.data(), d.statistic.data(), d.estimate.data(), d.claim.data()});
+                 {d.row.data(), d.theta.data(), d.statistic.data(), d.estimate.data(), d.claim.data(), df.data(), error.data()});
     d.row.resize(entities.count);
     d.statistic.resize(entities.count);
     d.estimate.resize(entities.count);
@@ -142,7 +143,8 @@ TEST_CASE("Sizes follow the exact rounded distribution (chi-squared)", "[design]
 }
 
 TEST_CASE("A study's draw depends on nothing but its address", "[design]") {
-    for (const Test test : {Test::two_means, Test::known_variance}) {
+    for (const Test test : {Test::two_means, Test::known_variance, Test::one_mean, Test::correlation, Test::several_means,
+                            Test::two_proportions}) {
         const Science science = science_of(test, lognormal_sizes());
         const TestTable table = test_table(science, {});
         const Drawn all = draw(science, table, {0, nullptr, 3000}, 0.2);
@@ -165,17 +167,37 @@ TEST_CASE("A study's draw depends on nothing but its address", "[design]") {
     }
 }
 
-TEST_CASE("All vector targets draw the same studies to rounding", "[design]") {
-    const Science science = science_of(Test::two_means, lognormal_sizes());
-    const TestTable table = test_table(science, {});
-    const Drawn best = draw(science, table, {0, nullptr, 20000}, 0.3);
-    for (const std::int64_t target : hwy::SupportedAndGeneratedTargets()) {
-        hwy::SetSupportedTargetsForTest(target);
-        const Drawn other = draw(science, table, {0, nullptr, 20000}, 0.3);
-        hwy::SetSupportedTargetsForTest(0);
-        CHECK(other.row == best.row);
-        for (std::size_t i = 0; i < best.statistic.size(); ++i) {
-            REQUIRE(other.statistic[i] == Approx(best.statistic[i]).epsilon(1e-12).margin(1e-13));
+TEST_CASE("All vector targets draw the same studies to rounding, with every design", "[design]") {
+    const auto with = [](Test test, auto change) {
+        Science science = science_of(test, lognormal_sizes());
+        change(science.design);
+        return science;
+    };
+    const auto nothing = [](Design&) {};
+    const std::vector<Science> sciences{
+        with(Test::two_means, nothing),
+        with(Test::two_means, [](Design& d) { d.welch = true; d.equivalence.bound = 0.6; d.allocation = 1.5; }),
+        with(Test::paired_means, [](Design& d) { d.equivalence.bound = 0.5; }),
+        with(Test::known_variance, nothing),
+        with(Test::correlation, nothing),
+        with(Test::several_means, [](Design& d) { d.groups = 4; }),
+        with(Test::several_means, [](Design& d) { d.groups = 5; }),
+        with(Test::two_proportions, [](Design& d) { d.base_rate = 0.35; }),
+        with(Test::two_means, [](Design& d) { d.looks.count = 2; })};
+    for (const Science& science : sciences) {
+        INFO("test " << int(science.design.test) << " groups " << science.design.groups);
+        const TestTable table = test_table(science, {});
+        const Drawn best = draw(science, table, {0, nullptr, 20000}, 0.3);
+        for (const std::int64_t target : hwy::SupportedAndGeneratedTargets()) {
+            hwy::SetSupportedTargetsForTest(target);
+            const Drawn other = draw(science, table, {0, nullptr, 20000}, 0.3);
+            hwy::SetSupportedTargetsForTest(0);
+            CHECK(other.row == best.row);
+            CHECK(other.claim == best.claim);
+            for (std::size_t i = 0; i < best.statistic.size(); ++i) {
+                REQUIRE(other.statistic[i] == Approx(best.statistic[i]).epsilon(1e-11).margin(1e-12));
+                REQUIRE(other.estimate[i] == Approx(best.estimate[i]).epsilon(1e-11).margin(1e-12));
+            }
         }
     }
 }
