@@ -23,10 +23,16 @@ std::string power_text(const DesignPreview& design) {
     return fmt::format("{}\n{:.4f} predicted", power, design.power_predicted);
 }
 
+/// An F test has no sides.
+std::string test_text(const DesignPreview& design) {
+    if (design.test == "several-means") return fmt::format("{}\nF {}", design.test, design.alpha);
+    return fmt::format("{}\n{}-sided {}", design.test, design.sides == 2 ? "two" : "one", design.alpha);
+}
+
 std::vector<std::string> design_cells(const DesignPreview& design) {
     const std::string n = size_text(design.n1, design.n1_low, design.n1_high);
     return {design.lab,
-            fmt::format("{}\n{}-sided {}", design.test, design.sides == 2 ? "two" : "one", design.alpha),
+            test_text(design),
             design.n2 > 0 ? fmt::format("{}\nper group", n) : n,
             show_number(design.effect, 4),
             power_text(design),
