@@ -131,12 +131,6 @@ std::uint32_t sure_row(const TestTable& table, const TestTable::Kind& kind, std:
     return static_cast<std::uint32_t>(table.other_row[its]);
 }
 
-std::uint32_t pick_row(const TestTable& table, const TestTable::Kind& kind, double u) {
-    const double x = u * kind.sizes;  // below kind.sizes, as u is at most 1 - 2^-53
-    const auto its = kind.first_row + static_cast<std::uint32_t>(x);
-    return x - std::floor(x) < table.keep[its] ? its : static_cast<std::uint32_t>(table.other_row[its]);
-}
-
 /// Rows of planned studies, from their planning effects.
 void plan_sizes(const TestTable& table, const std::uint8_t* kind, const double* planned, std::size_t count,
                 std::uint32_t* row) {
@@ -147,6 +141,13 @@ void plan_sizes(const TestTable& table, const std::uint8_t* kind, const double* 
 }
 
 }  // namespace
+
+std::uint32_t pick_row(const TestTable& table, const TestTable::Kind& kind, double u) {
+    const double x = u * kind.sizes;
+    const std::uint32_t column = std::min(static_cast<std::uint32_t>(x), kind.sizes - 1);
+    const std::uint32_t its = kind.first_row + column;
+    return x - column < table.keep[its] ? its : static_cast<std::uint32_t>(table.other_row[its]);
+}
 
 Claim claim_of(double statistic, double critical, int sides) {
     if (statistic > critical) return Claim::positive;

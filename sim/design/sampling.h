@@ -77,6 +77,10 @@ bool fills_standard_error(const Design& design);
 void draw_sizes(const StudyRound& round, const TestTable& table, const std::uint8_t* kind, const double* planned,
                 SamplingScratch& scratch, std::uint32_t* row);
 
+/// The row of `kind` that a uniform picks, by the alias method; 0 <= u <= 1, so that no rounding of u leads
+/// out of the kind's rows.
+std::uint32_t pick_row(const TestTable& table, const TestTable::Kind& kind, double u);
+
 /// Statistic, estimate and claim of each study, of any design.
 void draw_studies(const StudyRound& round, const Design& design, const TestTable& table, SamplingScratch& scratch,
                   StudyBatch batch);

@@ -230,8 +230,9 @@ void words(StreamKey key, Address address, Entities entities, std::uint32_t* out
 double refined(StreamKey key, Address address, std::uint64_t entity, std::uint32_t word, int bits) {
     address.index += static_cast<std::uint32_t>(address.purpose);
     address.purpose = Purpose::refinement;
-    // A uniform of 53 bits behind the word's may round up to 1.
-    return std::fmin(std::ldexp(word + Stream(key, address, entity).uniform(), -bits), 1.0 - 0x1p-53);
+    // A sum of many bits would round up to the next word, and beyond the last word to 1.
+    const double sum = word + Stream(key, address, entity).uniform();
+    return std::ldexp(std::fmin(sum, std::nextafter(word + 1.0, 0.0)), -bits);
 }
 
 std::string vector_target() { return HWY_DYNAMIC_DISPATCH(TargetName)(); }

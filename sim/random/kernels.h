@@ -41,8 +41,8 @@ void words(StreamKey key, Address address, Entities entities, std::uint16_t* out
 ///   entity e: block (e / 64) * 16 + e % 16, word (e / 16) % 4.
 void words(StreamKey key, Address address, Entities entities, std::uint32_t* out);
 
-/// The uniform on (0, 1) whose leading bits are `word` (of `bits` bits): asked for when the word alone
-/// does not decide.
+/// The uniform on (0, 1), never its ends, whose leading bits are `word` (of `bits` bits): asked for when
+/// the word alone does not decide.
 double refined(StreamKey key, Address address, std::uint64_t entity, std::uint32_t word, int bits);
 
 /// The vector instruction set in use, e.g. "AVX3".

@@ -18,35 +18,35 @@ std::uint32_t mixed(std::uint32_t x) {
     return x ^ x >> 16;
 }
 
-/// A whole number below `bound`, every one equally often: by the high half of a product, drawn again where the
-/// low half would favour some (Lemire 2019, "Fast random integer generation in an interval", ACM TOMACS 29).
-std::uint32_t below(std::uint32_t bound, Stream& stream) {
-    const std::uint32_t least = static_cast<std::uint32_t>(-bound) % bound;
-    for (;;) {
-        const std::uint64_t product = std::uint64_t{stream()} * bound;
-        if (static_cast<std::uint32_t>(product) >= least) return static_cast<std::uint32_t>(product >> 32);
+/// Uniform on 0 .. range-1, without bias: Lemire (2019, "Fast random integer generation in an
+/// interval", ACM TOMACS 29), algorithm 5 with 32-bit words. `range` from 1.
+std::uint32_t below(Stream& stream, std::uint32_t range) {
+    std::uint64_t product = std::uint64_t{stream()} * range;
+    if (static_cast<std::uint32_t>(product) < range) {
+        const std::uint32_t surplus = (0u - range) % range;  // 2^32 mod range: words that would tip the scale
+        while (static_cast<std::uint32_t>(product) < surplus) product = std::uint64_t{stream()} * range;
     }
+    return static_cast<std::uint32_t>(product >> 32);
+}
+
+std::vector<std::uint16_t> shuffled(std::uint32_t size, Stream stream) {
+    std::vector<std::uint16_t> table(size);
+    std::iota(table.begin(), table.end(), std::uint16_t{0});
+    for (std::uint32_t left = size; left > 1; --left) std::swap(table[left - 1], table[below(stream, left)]);
+    return table;
 }
 
 }  // namespace
 
 Permutation::Permutation(std::uint64_t size, Stream stream) : size_(size) {
-    if (size <= largest_stored) {
-        shuffle(stream);
+    if (size <= largest_table) {
+        table_ = shuffled(static_cast<std::uint32_t>(size), stream);
         return;
     }
     const auto bits = static_cast<unsigned>(std::bit_width(size - 1));
     low_bits_ = bits / 2;
     high_bits_ = bits - low_bits_;
     for (std::uint32_t& key : keys_) key = stream();
-}
-
-void Permutation::shuffle(Stream& stream) {
-    stored_.resize(size_);
-    std::iota(stored_.begin(), stored_.end(), 0u);
-    for (auto left = static_cast<std::uint32_t>(size_); left > 1; --left) {
-        std::swap(stored_[left - 1], stored_[below(left, stream)]);
-    }
 }
 
 std::uint64_t Permutation::once(std::uint64_t x) const {
@@ -64,8 +64,8 @@ std::uint64_t Permutation::once(std::uint64_t x) const {
 
 void Permutation::images(std::uint64_t first, std::size_t count, std::vector<std::uint64_t>& out) const {
     out.resize(count);
-    if (!stored_.empty()) {
-        std::copy_n(stored_.begin() + static_cast<std::ptrdiff_t>(first), count, out.begin());
+    if (!table_.empty()) {
+        std::copy_n(table_.begin() + static_cast<std::ptrdiff_t>(first), count, out.begin());
         return;
     }
     for (std::size_t i = 0; i < count; ++i) out[i] = once(first + i);

@@ -1,6 +1,7 @@
 #include <hwy/targets.h>
 
 #include <algorithm>
+#include <boost/math/distributions/chi_squared.hpp>
 #include <catch2/catch.hpp>
 #include <cmath>
 
@@ -245,5 +246,62 @@ TEST_CASE("Statistics drawn from their joint distribution match participants dra
         };
         CHECK(distance(drawn.statistic, plain_t) < oracle::kolmogorov_bound);
         CHECK(distance(drawn.estimate, plain_d) < oracle::kolmogorov_bound);
+    }
+}
+
+TEST_CASE("The largest uniforms pick a row of their own kind", "[design]") {
+    for (std::uint32_t rows = 1; rows < 3000; ++rows) {
+        // Two kinds; columns keep all of their chance, so the row is the column, and what stands behind the
+        // first kind's rows would show.
+        TestTable table;
+        table.keep.assign(2 * rows, 1.0);
+        table.other_row.assign(2 * rows, 7777777);
+        table.kinds = {{0, rows, {}, false}, {rows, rows, {}, false}};
+        for (const double u : {1.0 - 0x1p-53, 1.0 - 0x1p-52, 1.0 - 0x1p-32}) {
+            REQUIRE(pick_row(table, table.kinds[0], u) == rows - 1);
+            REQUIRE(pick_row(table, table.kinds[1], u) == 2 * rows - 1);
+        }
+        // An end that has been rounded to: past the column's whole, so to the alias, which is a row too.
+        table.other_row.assign(2 * rows, rows - 1);
+        REQUIRE(pick_row(table, table.kinds[0], 1.0) == rows - 1);
+    }
+    const TestTable table = test_table(science_of(Test::two_means, lognormal_sizes()), {});
+    CHECK(pick_row(table, table.kinds[0], 1.0) < table.n1.size());
+    CHECK(pick_row(table, table.kinds[0], 0.0) < table.n1.size());
+}
+
+TEST_CASE("The variance of small studies is chi-squared (Boost.Math), in 400 cells of four million draws",
+          "[design]") {
+    // An effect so large that the sampling error vanishes beside it leaves statistic = noncentrality /
+    // sqrt(variance), to 1e-8.
+    const double effect = 1e9;
+    const std::size_t count = 4'000'000;
+    for (const std::uint32_t n : {2u, 3u, 4u}) {
+        const Science science = science_of(Test::two_means, fixed_size(n));
+        const TestTable table = test_table(science, {});
+        const Drawn d = draw(science, table, {0, nullptr, count}, effect);
+        const boost::math::chi_squared law(2.0 * n - 2.0);
+        // 200 cells of equal chance, the outer two of them cut into 100 each.
+        std::vector<double> chance;
+        for (int i = 1; i < 100; ++i) chance.push_back(i * 5e-5);
+        for (int i = 1; i < 200; ++i) chance.push_back(i * 5e-3);
+        for (int i = 1; i < 100; ++i) chance.push_back(0.995 + i * 5e-5);
+        std::vector<double> edges;
+        for (const double p : chance) edges.push_back(boost::math::quantile(law, p));
+        std::vector<double> seen(edges.size() + 1, 0.0);
+        for (const double t : d.statistic) {
+            const double ratio = effect * std::sqrt(n / 2.0) / t;
+            const double x = (2.0 * n - 2.0) * ratio * ratio;
+            seen[static_cast<std::size_t>(std::upper_bound(edges.begin(), edges.end(), x) - edges.begin())] += 1.0;
+        }
+        double statistic = 0.0;
+        for (std::size_t i = 0; i < seen.size(); ++i) {
+            const double expected = static_cast<double>(count) *
+                                    ((i < chance.size() ? chance[i] : 1.0) - (i > 0 ? chance[i - 1] : 0.0));
+            statistic += (seen[i] - expected) * (seen[i] - expected) / expected;
+        }
+        INFO("n " << n << ", chi-squared " << statistic << " on " << seen.size() - 1);
+        CHECK(statistic < boost::math::quantile(complement(
+                              boost::math::chi_squared(static_cast<double>(seen.size() - 1)), 1e-4 / 3)));
     }
 }

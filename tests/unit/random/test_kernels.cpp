@@ -181,6 +181,22 @@ TEST_CASE("A refined uniform begins with its word", "[random]") {
     }
 }
 
+TEST_CASE("A refined uniform stays below the next word, and below 1, however close its further bits come",
+          "[random]") {
+    // 32-bit words leave 21 of 53 bits, so word + bits would round up where the bits are above 1 - 2^-22.
+    // These entities' further bits are, found by a search through 2^26 streams.
+    const Address address{0, Purpose::study_size, 0, 0};
+    const Address further{0, Purpose::refinement, 0, static_cast<std::uint32_t>(Purpose::study_size)};
+    for (const std::uint64_t entity : {20393650u, 59257646u, 60569214u}) {
+        REQUIRE(Stream(key, further, entity).uniform() > 1.0 - 0x1p-22);
+        for (const std::uint32_t word : {0xFFFFFFFFu, 0xFFFFFFFEu, 0x80000000u}) {
+            const double fine = refined(key, address, entity, word, 32);
+            CHECK(fine < (word + 1.0) * 0x1p-32);
+            CHECK(fine >= word * 0x1p-32);
+        }
+    }
+}
+
 TEST_CASE("Decisions have their chance exactly, also where the word alone cannot tell", "[random]") {
     // Chances that differ by less than 2^-16 share their sure words; the open ones make the difference.
     const std::size_t count = 1u << 22;
