@@ -64,6 +64,7 @@ DesignPreview preview_design(const Regime& regime, const LabKind& lab) {
         const double planned = lab.size.effect.is_true ? lab.size.effect.optimism * preview.effect : preview.effect;
         plan.noncentrality = noncentrality_of_power(design, lab.size.n, lab.size.power) / std::fabs(planned);
     }
+    preview.power_is_exact = design.looks.count == 1 || design.test == Test::known_variance;
     preview.power = power(design, plan, preview.effect);
     preview.power_predicted = power_predicted(design, plan, preview.effect);
     preview.critical = plan.critical;

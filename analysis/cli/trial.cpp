@@ -68,7 +68,14 @@ SizePreview measure_size(const Scenario& scenario, unsigned threads, double seco
     double detail_bytes = 0.0;
     RunOptions options;
     options.threads = threads;
-    options.stop = [&] { return elapsed() > seconds; };
+    // What is worked out before the first study does not grow with the run: the clock of its cost starts later.
+    double prepared = -1.0, studies_before = 0.0;
+    options.stop = [&] { return prepared >= 0.0 && elapsed() - prepared > seconds; };
+    options.progress = [&](const Progress& progress) {
+        if (prepared >= 0.0) return;
+        prepared = elapsed();
+        studies_before = static_cast<double>(progress.studies_done);
+    };
     Sinks sinks;
     sinks.literature = [](std::uint32_t, const std::vector<std::vector<double>>&) {};
     sinks.rows = [&](const std::string&, Batch&& batch) { detail_bytes += plain_bytes(batch); };
@@ -81,7 +88,9 @@ SizePreview measure_size(const Scenario& scenario, unsigned threads, double seco
     const double row_bytes = 8.0 * static_cast<double>(literatures_table(scenario).columns.size());
     SizePreview size;
     size.studies = studies * literatures;
-    size.seconds = time * share;
+    const double timed = static_cast<double>(outcome.studies) - studies_before;
+    const double start_up = prepared < 0.0 ? 0.0 : prepared;
+    size.seconds = timed > 0.0 ? start_up + (time - start_up) * size.studies / timed : time * share;
     size.memory_bytes = peak_memory();
     size.file_bytes = (detail_bytes * share + rows * row_bytes) * (scenario.store.compress ? deflated : 1.0);
     return size;

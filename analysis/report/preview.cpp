@@ -18,7 +18,7 @@ std::string size_text(std::uint32_t n, std::uint32_t low, std::uint32_t high) {
 }
 
 std::string power_text(const DesignPreview& design) {
-    const std::string power = fmt::format("{:.4f}", design.power);
+    const std::string power = fmt::format("{:.4f}{}", design.power, design.power_is_exact ? "" : "\nby normal drift");
     if (std::fabs(design.power - design.power_predicted) <= 1e-6) return power;
     return fmt::format("{}\n{:.4f} predicted", power, design.power_predicted);
 }
@@ -33,7 +33,9 @@ std::vector<std::string> design_cells(const DesignPreview& design) {
     const std::string n = size_text(design.n1, design.n1_low, design.n1_high);
     return {design.lab,
             test_text(design),
-            design.n2 > 0 ? fmt::format("{}\nper group", n) : n,
+            design.n2 == design.n1 ? fmt::format("{}\nper group", n)
+            : design.n2 > 0        ? fmt::format("{}\nand {}", n, show_count(design.n2))
+                                   : n,
             show_number(design.effect, 4),
             power_text(design),
             show_number(design.critical, 5),

@@ -19,6 +19,7 @@ struct DesignPreview {
     int sides = 2;
     std::uint32_t n1 = 0, n2 = 0, n1_low = 0, n1_high = 0;
     double effect = 0;           // that `power` is at: the planning effect, or the mean effect of real questions
+    bool power_is_exact = true;  // else by the normal drift of interim looks
     double power = 0;            // chance of a significant result, either tail of a two-sided test
     double power_predicted = 0;  // chance of a significant result in the predicted direction
     double critical = 0;         // of the statistic

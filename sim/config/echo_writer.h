@@ -48,6 +48,10 @@ public:
         EchoWriter inner(object_[key] = EchoJson::object());
         describe_inner(inner);
     }
+    template <class F>
+    void optional_table(const char* key, bool& given, const About& about, F describe_inner) {
+        if (given) table(key, about, describe_inner);
+    }
     template <class S, class F>
     void number_or_table(const char* key, const Range&, const About& about, S, F describe_inner) {
         table(key, about, describe_inner);

@@ -58,6 +58,10 @@ public:
         Lister inner(full(key), rows_);
         describe_inner(inner);
     }
+    template <class F>
+    void optional_table(const char* key, bool&, const About& about, F describe_inner) {
+        table(key, about, describe_inner);
+    }
     template <class S, class F>
     void number_or_table(const char* key, const Range& range, const About& about, S, F describe_inner) {
         add(key, fmt::format("number, {}, or table", to_string(range)), "1", about);

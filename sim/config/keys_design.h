@@ -1,6 +1,8 @@
 // [design], and the `size` of a design or a kind of labs
 #pragma once
 
+#include <cmath>
+
 #include "sim/config/keys_distribution.h"
 #include "sim/config/size_rules.h"
 #include "sim/config/support.h"
@@ -63,7 +65,7 @@ void describe(V& v, SizePlan& size, const Design& design) {
         v.number("power", size.power, open_share_range, About::required_key(meaning));
         describe(v, size.effect, design);
         v.check(
-            {"power"}, [&] { return size.power > design.alpha; },
+            {"power"}, [&] { return size.power > design.alpha * (1.0 + 1e-9); },
             fmt::format("must be above alpha, which is {}", design.alpha), "any n has more power than alpha");
     };
     v.variant("plan", size.kind, Kind::power, [&] {
@@ -77,6 +79,17 @@ void describe(V& v, SizePlan& size, const Design& design) {
             },
             fmt::format("needs more than {} observations", largest_n), "plan for a larger effect or less power");
     });
+    v.check({"effect", "plan"},
+            [&] { return !(size.kind == Kind::power && size.effect.is_true && design.welch) || design.allocation == 1.0; },
+            "must be a number for Welch's test of unequal groups", "plan for a number, or set allocation = 1");
+    v.check({"most", "effect", "plan"},
+            [&] {
+                const bool slow = design.allocation != std::floor(design.allocation);
+                return !(size.kind == Kind::power && size.effect.is_true && slow) || size.most <= 20000;
+            },
+            "must be 20000 or less where allocation is not a whole number", "");
+    v.check({"most"}, [&] { return size.kind != Kind::power || size.effect.is_true || size.most == SizePlan{}.most; },
+            "needs effect = \"true\"", "");
     v.variant("plan", size.kind, Kind::exact_power, [&] {
         describe_power("the power that every study of the planning effect has");
         v.integer("n", size.n, least, largest_n, About::required_key("observations (per group)"));
@@ -84,7 +97,7 @@ void describe(V& v, SizePlan& size, const Design& design) {
                 "\"exact-power\" needs a design of one or two means with Student's or the z test", "");
     });
     v.check({"plan"}, [&] { return design.looks.count == 1 || !size.for_each_question(); },
-            "must not follow true effects when there are interim looks", "");
+            "must be neither for true effects nor for an exact power where there are interim looks", "");
     check_sizes(v, size, design);
 }
 
@@ -106,6 +119,8 @@ void describe(V& v, Looks& looks, const Design& design) {
                            "no study stops for futility"));
     v.check({"count"}, [&] { return looks.count == 1 || has_free_noise(design); },
             "needs a design of one or two means with Student's or the z test", "");
+    v.check({"count"}, [&] { return looks.count == 1 || design.alpha >= 1e-9; },
+            "needs alpha of 1e-9 or more", "");
     v.check({"count"}, [&] { return looks.count == 1 || !design.equivalence.tested(); },
             "must be 1 where equivalence is tested", "");
 }

@@ -5,6 +5,7 @@
 #include <vector>
 
 #include "sim/config/keys_design.h"
+#include "sim/config/keys_practices.h"
 
 namespace lacuna {
 
@@ -51,6 +52,10 @@ void describe(V& v, LabKind& lab, const Design& design) {
         inner.preset(lab.size, SizePlan{});
         describe(inner, lab.size, design);
     });
+    v.table("practices", About::derived("what bends this kind's analyses", "nothing"),
+            [&](auto& inner) { describe(inner, lab.practices, design); });
+    v.check({"practices", "size"}, [&] { return !lab.practices.optional_stopping.used || lab.size.kind != SizePlan::Kind::exact_power; },
+            "must not hold optional_stopping where sizes are planned for an exact power", "");
 }
 
 template <class V>

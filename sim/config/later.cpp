@@ -7,10 +7,18 @@ namespace lacuna {
 
 namespace {
 
-constexpr std::array<std::string_view, 5> later_keys{"sweep",
+constexpr std::array<std::string_view, 13> later_keys{"sweep",
                                                      "registry",
                                                      "run.precision",
-                                                     "lab.practices",
+                                                     "lab.practices.outcome_switching",
+                                                     "lab.practices.condition_dropping",
+                                                     "lab.practices.covariate_search",
+                                                     "lab.practices.subgroup_search",
+                                                     "lab.practices.outlier_removal",
+                                                     "lab.practices.hypothesis_reversal",
+                                                     "lab.practices.lenient_rounding",
+                                                     "lab.practices.selective_line_reporting",
+                                                     "lab.practices.direct_bias",
                                                      "journal.registered_reports"};
 
 /// The key without positions: lab.3.practices -> lab.practices.

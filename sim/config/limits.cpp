@@ -85,6 +85,13 @@ void demand_possible_effects(const Science& science, Limits& limits) {
                       std::none_of(science.labs.begin(), science.labs.end(), scaled_by_truth),
                   "field.effect", "may be exactly 0, where no noise gives the exact power that is asked for",
                   "leave 0 out of its values");
+    const auto hopes_too_much = [&](const LabKind& lab) {
+        return follows_truth(lab) && lab.size.optimism_of_truth() * highest_draw(science.field.effect) >= 1.0;
+    };
+    limits.demand(test != Test::correlation ||
+                      std::none_of(science.labs.begin(), science.labs.end(), hopes_too_much),
+                  "field.effect", "times the optimism of a size plan is a correlation of 1 or more",
+                  "lower the optimism, or bound the effects with max");
     limits.demand(!never || std::none_of(science.labs.begin(), science.labs.end(), follows_truth), "field.effect",
                   "is 0, and sizes are planned for true effects: no n gives power for no effect",
                   "plan for a number instead of \"true\"");

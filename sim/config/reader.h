@@ -7,6 +7,7 @@
 //   number_or_word  a number, or one word that says how it comes about
 //   bound           a number that is left out where it is infinite
 //   table           a key that holds a table
+//   optional_table  a table that need not be given; `given` says whether it is
 //   number_or_table a key that holds a table, or a number that `set` turns into the same values
 //   list            a key that holds an array of tables
 //   variant         keys that exist only where the word under `tag` is the one for `wanted`
@@ -66,6 +67,12 @@ public:
         const ConfigEntry* entry = take(key, about);
         if (!entry) return false;
         return read_table(key, entry->value, "a table", about, read);
+    }
+
+    template <class F>
+    void optional_table(const char* key, bool& given, const About& about, F read) {
+        const bool is_given = table(key, about, read);
+        if (!dormant_ && is_given) given = true;
     }
 
     template <class S, class F>

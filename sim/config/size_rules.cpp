@@ -47,7 +47,7 @@ bool can_be_effect(Test test, double effect) {
         case Test::correlation:
             return std::fabs(effect) < 1.0;
         case Test::several_means:
-            return effect >= 0.0;
+            return effect >= 0.0 && effect <= 10.0;
         case Test::two_proportions:
             return std::fabs(effect) <= largest_log_odds_ratio;
         case Test::two_means:
@@ -64,7 +64,7 @@ const char* effect_limits(Test test) {
         case Test::correlation:
             return "must be above -1 and below 1, being a correlation";
         case Test::several_means:
-            return "must be 0 or more, being Cohen's f";
+            return "must be between 0 and 10, being Cohen's f";
         case Test::two_proportions:
             return "must be between -30 and 30, being a log odds ratio";
         case Test::two_means:

@@ -11,6 +11,7 @@ bool is_tabulated(const SizePlan& size);
 inline constexpr std::uint32_t largest_tabulated_n = 1u << 20;
 inline constexpr std::uint32_t most_looks = 20;
 inline constexpr std::uint32_t most_groups = 1000;
+inline constexpr std::uint32_t most_unplanned_looks = 4999;  // after the first
 
 /// Whether a study's noise can be set so that its power is any wanted: one or two means, z or Student.
 bool has_free_noise(const Design& design);

@@ -1,13 +1,13 @@
 #include "sim/design/correlation.h"
 
 #include <array>
-#include <boost/math/tools/toms748_solve.hpp>
 #include <cmath>
-#include <limits>
+#include <span>
 
-#include "sim/stats/chi_expectation.h"
-#include "sim/stats/partitioned_t.h"
-#include "sim/stats/student_t.h"
+#include "sim/design/level_search.h"
+#include "sim/design/share_expectation.h"
+#include "sim/stats/distribution.h"
+#include "sim/tail/tails.h"
 
 namespace lacuna::correlation {
 
@@ -16,21 +16,25 @@ TestPlan plan(StudySize size) {
     return {size, n, n - 2.0, std::sqrt(n - 1.0), 1.0, infinity};
 }
 
-Tails tails(double critical, std::uint32_t n, double rho, int sides) {
-    const double df = n - 2.0;
-    const double slope = rho / std::sqrt((1.0 - rho) * (1.0 + rho));
-    const double per_s = slope * std::sqrt(n - 1.0);  // noncentrality is per_s S, S = chi_{n-1} / sqrt(n - 1)
-    if (per_s == 0.0) {
-        const double upper = noncentral_t_upper(critical, df, 0.0);
-        return {upper, sides == 2 ? noncentral_t_lower(-critical, df, 0.0) : 0.0};
-    }
-    const PartitionedT parts({-infinity, -critical, critical, infinity}, df);
-    const std::array<double, 1> bend{per_s};
-    const auto sums = chi_expectation<2>(n - 1.0, chi_pieces(n - 1.0, critical, bend), [&](double s) {
-        const std::vector<TruncatedT> part = parts(per_s * s);
-        return std::array<double, 2>{part[2].chance, part[0].chance};
+// T = (theta X + Z) / (Y / sqrt(n - 2)), theta = rho / sqrt(1 - rho^2), X and Y independent chi of n - 1 and
+// n - 2 degrees of freedom. With X = R cos(a), Y = R sin(a), T > t where Z / R > t' sin(a) - theta cos(a),
+// t' = t / sqrt(n - 2); R, chi of 2n - 3 degrees of freedom, is independent of a, so that Z / R is a central t
+// over sqrt(2n - 3).
+double upper(double t, std::uint32_t n, double rho) {
+    const double theta = rho / std::sqrt((1.0 - rho) * (1.0 + rho));
+    const double slope = t / std::sqrt(n - 2.0);
+    const double df = 2.0 * n - 3.0, root = std::sqrt(df);
+    return share_expectation(n - 1.0, n - 2.0, [&](std::span<const double> angles, std::span<double> values) {
+        std::array<double, 31> dfs;
+        dfs.fill(df);
+        for (std::size_t i = 0; i < angles.size(); ++i)
+            values[i] = root * (slope * std::sin(angles[i]) - theta * std::cos(angles[i]));
+        t_upper_tails(values.data(), dfs.data(), angles.size(), values.data());
     });
-    return {sums[0], sides == 2 ? sums[1] : 0.0};
+}
+
+Tails tails(double critical, std::uint32_t n, double rho, int sides) {
+    return {upper(critical, n, rho), sides == 2 ? upper(critical, n, -rho) : 0.0};
 }
 
 double r_of_t(double t, double df) { return t / std::sqrt(t * t + df); }
@@ -39,17 +43,8 @@ double standard_error(double r, std::uint32_t n) { return (1.0 - r * r) / std::s
 
 double equivalence_critical_t(std::uint32_t n, double bound, double alpha) {
     // The alpha quantile of T at rho = bound; by symmetry the other test has its negative.
-    const double df = n - 2.0;
-    const auto excess = [&](double r) {
-        const double t = r * std::sqrt(df / ((1.0 - r) * (1.0 + r)));
-        const Tails at = tails(std::fabs(t), n, bound, 2);
-        return (t >= 0.0 ? 1.0 - at.predicted : at.reversed) - alpha;
-    };
-    double low = -1.0 + 1e-9, high = 1.0 - 1e-9;
-    std::uintmax_t steps = 100;
-    const auto ends = boost::math::tools::toms748_solve(excess, low, high, boost::math::tools::eps_tolerance<double>(46), steps);
-    const double r = 0.5 * (ends.first + ends.second);
-    return r * std::sqrt(df / ((1.0 - r) * (1.0 + r)));
+    const double centre = bound * std::sqrt((n - 2.0) / ((1.0 - bound) * (1.0 + bound)));
+    return level_search([&](double t) { return upper(-t, n, -bound); }, alpha, centre, 1.0);
 }
 
 }  // namespace lacuna::correlation

@@ -12,10 +12,10 @@ inline constexpr std::uint32_t smallest_n = 4;  // pairs
 /// value is left at infinity.
 TestPlan plan(StudySize size);
 
-/// Chances of T > critical and, with two sides, of T < -critical at the correlation rho, -1 < rho < 1. Exact, to
-/// 1e-9 or better: given the first variable's spread chi_{n-1}, T is a noncentral t of noncentrality
-/// rho / sqrt(1 - rho^2) chi_{n-1} (Johnson, Kotz & Balakrishnan 1995, Continuous Univariate Distributions 2,
-/// ch. 32), and that is averaged over chi.
+/// P(T > t) at the correlation rho, -1 < rho < 1; and that of T > critical with, in a two-sided test, T < -critical.
+/// Exact, to 1e-10: one integral of a central t tail (see the derivation beside it; the law of T is that of
+/// Johnson, Kotz & Balakrishnan 1995, Continuous Univariate Distributions 2, ch. 32).
+double upper(double t, std::uint32_t n, double rho);
 Tails tails(double critical, std::uint32_t n, double rho, int sides);
 
 /// r = t / sqrt(t^2 + df).

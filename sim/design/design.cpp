@@ -87,7 +87,7 @@ TestPlan describe(const Design& design, std::uint32_t n) {
 
 Tails tails(const Design& design, const TestPlan& plan, double effect) {
     const StudySize size = plan.size;
-    if (design.looks.count > 1) return LookPlans(design).tails(effect * plan.noncentrality);
+    if (design.looks.count > 1) return LookPlans(design).tails(size.n1, effect * plan.noncentrality);
     switch (design.test) {
         case Test::two_means:
             if (design.welch) return welch::tails(design.alpha, design.sides, size.n1, size.n2, effect);

@@ -49,8 +49,10 @@ double LookPlans::futility(std::uint32_t look, double df) const {
     return t_critical(df, nominal_level(std::fmin(looks_.futility, bound_[look]), 1));
 }
 
-Tails LookPlans::tails(double drift) const {
-    const Crossing its = crossing(information_, bound_, design_.sides, drift, looks_.futility);
+Tails LookPlans::tails(std::uint32_t n, double drift) const {
+    std::vector<double> information;
+    for (const double share : information_) information.push_back(std::floor(n * share + 0.5) / n);
+    const Crossing its = crossing(information, bound_, design_.sides, drift, looks_.futility);
     return {its.predicted, its.reversed};
 }
 

@@ -11,8 +11,8 @@
 
 namespace lacuna {
 
-/// The looks of a design. Bounds are found once (sim/sequential), for looks at equal steps of information; a
-/// Student's t at look k is judged at the nominal level of the z bound (common practice: Jennison & Turnbull
+/// The looks of a design. Bounds are found once (sim/sequential), for looks at equal steps of information, which
+/// sizes that do not divide by K meet to rounding only; a Student's t at look k is judged at the nominal level of the z bound (common practice: Jennison & Turnbull
 /// 2000, Group Sequential Methods, section 3.8; cited from memory).
 class LookPlans {
 public:
@@ -25,9 +25,9 @@ public:
     /// T (in absolute value if two-sided) below which look k of a study on `df` stops for futility.
     double futility(std::uint32_t look, double df) const;
 
-    /// Chances of the two kinds of significant results for Z with this drift at the end: exact where the
-    /// variance is known.
-    Tails tails(double drift) const;
+    /// Chances of the two kinds of significant results of a study of n observations (per group) at the end, for Z
+    /// with this drift there, its looks where rounding puts them: exact where the variance is known.
+    Tails tails(std::uint32_t n, double drift) const;
 
     /// The factor by which the looks enlarge a fixed design of this power (without stops for futility).
     double inflation(double power) const;

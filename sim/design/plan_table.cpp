@@ -19,8 +19,8 @@ double where_passes(F f, double target, double guess, double most) {
     double low = guess, high = guess;
     while (high < most && above(high) < 0.0) high = std::fmin(most, 1.3 * high);
     if (high == most && above(most) < 0.0) return most;
-    while (above(low) > 0.0) low /= 1.3;
-    if (low == high) return low;
+    while (above(low) > 0.0 && low > 1e-9) low /= 1.3;  // at 0 the power is alpha, to rounding
+    if (low == high || above(low) > 0.0) return low;
     std::uintmax_t steps = 100;
     const auto ends = boost::math::tools::toms748_solve(above, low, high, boost::math::tools::eps_tolerance<double>(50), steps);
     return 0.5 * (ends.first + ends.second);

@@ -66,6 +66,7 @@ struct StudyBatch {
     std::uint8_t* claim;        // out, a Claim
     double* df = nullptr;              // out, of designs whose degrees of freedom depend on the data
     double* standard_error = nullptr;  // out, of designs whose standard error needs more than the estimate
+    std::uint16_t* looks = nullptr;    // out where studies have looks: how many were made
 };
 
 /// Which of the optional columns a design fills.

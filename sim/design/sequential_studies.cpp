@@ -18,12 +18,10 @@ double take_in(double n, double m, double mean, double& group_mean) {
 }
 
 /// The rows of look k of the active entries.
-void rows_of_look(const TestTable& table, std::uint32_t k, std::uint32_t last, const StudyBatch& batch,
-                  SequentialScratch& scratch) {
+void rows_of_look(const LookRows& looks, std::uint32_t k, const StudyBatch& batch, SequentialScratch& scratch) {
     scratch.row.resize(scratch.active.size() + 16);
     for (std::size_t a = 0; a < scratch.active.size(); ++a) {
-        const std::uint32_t size = batch.row[scratch.active[a]];
-        scratch.row[a] = k < last ? table.first_look[size] + k : size;
+        scratch.row[a] = looks.first[batch.row[scratch.active[a]]] + k;
     }
 }
 
@@ -31,11 +29,10 @@ void rows_of_look(const TestTable& table, std::uint32_t k, std::uint32_t last, c
 
 /// Every look draws the means of its new observations and their sum of squares, and adds them to what is
 /// there: nothing is approximated, and nothing computed again.
-void draw_sequential_studies(const StudyRound& round, const Design& design, const TestTable& table,
+void draw_sequential_studies(const StudyRound& round, const Design& design, const TestTable& table, const LookRows& looks,
                              SamplingScratch& scratch, StudyBatch batch) {
     SequentialScratch& its = scratch.sequential;
     const std::size_t count = round.entities.count;
-    const std::uint32_t last = design.looks.count - 1;
     const bool two_groups = design.test == Test::two_means;
     const bool variance_known = design.test == Test::known_variance;
     its.active.resize(count);
@@ -43,9 +40,9 @@ void draw_sequential_studies(const StudyRound& round, const Design& design, cons
     its.mean.assign(count, 0.0);
     its.other_mean.assign(count, 0.0);
     its.squares.assign(count, 0.0);
-    for (std::uint32_t k = 0; k <= last && !its.active.empty(); ++k) {
+    for (std::uint32_t k = 0; !its.active.empty(); ++k) {
         const std::size_t active = its.active.size();
-        rows_of_look(table, k, last, batch, its);
+        rows_of_look(looks, k, batch, its);
         its.offsets.resize(active);
         for (std::size_t a = 0; a < active; ++a) {
             its.offsets[a] = round.entities.offsets ? round.entities.offsets[its.active[a]] : its.active[a];
@@ -61,20 +58,24 @@ void draw_sequential_studies(const StudyRound& round, const Design& design, cons
         for (std::size_t a = 0; a < active; ++a) {
             const std::uint32_t i = its.active[a];
             const std::uint32_t row = its.row[a];
-            const std::uint32_t before = k == 0 ? row : table.first_look[batch.row[i]] + k - 1;
-            const double n1 = k == 0 ? 0.0 : table.n1[before], n2 = k == 0 ? 0.0 : table.n2[before];
+            const double n1 = k == 0 ? 0.0 : table.n1[row - 1], n2 = k == 0 ? 0.0 : table.n2[row - 1];
             const double m1 = table.n1[row] - n1, m2 = table.n2[row] - n2;
-            its.squares[i] += scratch.v[a] + take_in(n1, m1, batch.theta[i] + scratch.z[a] / std::sqrt(m1), its.mean[i]);
-            if (two_groups) its.squares[i] += take_in(n2, m2, scratch.other_z[a] / std::sqrt(m2), its.other_mean[i]);
+            its.squares[i] += scratch.v[a];
+            if (m1 > 0.0)
+                its.squares[i] += take_in(n1, m1, batch.theta[i] + scratch.z[a] / std::sqrt(m1), its.mean[i]);
+            if (two_groups && m2 > 0.0)  // small groups may wait for the next look
+                its.squares[i] += take_in(n2, m2, scratch.other_z[a] / std::sqrt(m2), its.other_mean[i]);
             const double variance = variance_known ? 1.0 : its.squares[i] / table.df[row];
             const double t = (its.mean[i] - its.other_mean[i]) * table.noncentrality[row] / std::sqrt(variance);
             const Claim claim = claim_of(t, table.critical[row], design.sides);
             const bool futile = (design.sides == 2 ? std::fabs(t) : t) < table.futility[row];
-            if (k < last && claim == Claim::inconclusive && !futile) {
+            const bool is_last = k + 1 == looks.count[batch.row[i]];
+            if (!is_last && claim == Claim::inconclusive && !futile) {
                 its.still.push_back(i);
                 continue;
             }
             batch.row[i] = row;
+            if (batch.looks) batch.looks[i] = static_cast<std::uint16_t>(k + 1);
             batch.statistic[i] = t;
             batch.estimate[i] = t * table.to_estimate[row];
             batch.claim[i] = static_cast<std::uint8_t>(claim);

@@ -4,7 +4,10 @@
 #include <boost/math/distributions/non_central_f.hpp>
 #include <boost/math/tools/toms748_solve.hpp>
 #include <cmath>
+#include <exception>
 #include <limits>
+
+#include "sim/base/fault.h"
 
 namespace lacuna::several_means {
 
@@ -24,8 +27,16 @@ double upper(double x, double df_effect, double df, double lambda) {
     // Far above: the numerator lies within 12 of its standard deviations of its mean, the denominator below 12.
     const double numerator = df_effect + lambda - 12.0 * std::sqrt(2.0 * (df_effect + 2.0 * lambda));
     if (numerator > x * df_effect * (1.0 + 12.0 * std::sqrt(2.0 / df) + 100.0 / df)) return 1.0;
-    return boost::math::cdf(
-        boost::math::complement(boost::math::non_central_f_distribution<double, Quiet>(df_effect, df, lambda), x));
+    try {
+        return boost::math::cdf(
+            boost::math::complement(boost::math::non_central_f_distribution<double, Quiet>(df_effect, df, lambda), x));
+    } catch (const std::exception&) {  // its sums do not reach so far
+        Fault fault;
+        fault.key = "design";
+        fault.message = "the F test of so many participants at so large an effect is beyond what can be computed";
+        fault.remedy = "lower n, the effect, or the equivalence bound";
+        throw InputError(std::move(fault));
+    }
 }
 
 }  // namespace

@@ -13,7 +13,7 @@ bool fills_standard_error(const Design& design) { return design.test == Test::tw
 
 void draw_studies(const StudyRound& round, const Design& design, const TestTable& table, SamplingScratch& scratch,
                   StudyBatch batch) {
-    if (design.looks.count > 1) return draw_sequential_studies(round, design, table, scratch, batch);
+    if (design.looks.count > 1) return draw_sequential_studies(round, design, table, table.looks, scratch, batch);
     switch (design.test) {
         case Test::two_means:
         case Test::paired_means:

@@ -33,8 +33,8 @@ void draw_several_means_studies(const StudyRound& round, const Design& design, c
 void draw_two_proportions_studies(const StudyRound& round, const Design& design, const TestTable& table,
                                   SamplingScratch& scratch, StudyBatch batch);
 
-/// One or two means with interim looks.
-void draw_sequential_studies(const StudyRound& round, const Design& design, const TestTable& table,
+/// One or two means with the looks of `looks`: a study ends at the first significant or futile one, or the last.
+void draw_sequential_studies(const StudyRound& round, const Design& design, const TestTable& table, const LookRows& looks,
                              SamplingScratch& scratch, StudyBatch batch);
 
 }  // namespace lacuna

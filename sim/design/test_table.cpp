@@ -5,6 +5,7 @@
 
 #include "sim/design/design.h"
 #include "sim/design/looks.h"
+#include "sim/design/unplanned_looks.h"
 #include "sim/stats/student_t.h"
 #include "sim/variate/alias.h"
 #include "sim/variate/gamma.h"
@@ -107,32 +108,56 @@ void add_curves(const Design& design, const std::vector<Cut>& cuts, TestTable& t
     for (const Cut& cut : cuts) table.cut_curves.emplace_back(cut.p, cut.sides, least, most);
 }
 
-/// The rows of the looks before the last; the variance of every row becomes that of a look's new observations.
-void add_looks(const Design& design, const std::vector<Cut>& cuts, const LookPlans& looks, TestTable& table) {
-    const std::uint32_t last = design.looks.count - 1;
+/// Appends a look: the study as it stands then, and the chi-squared of what is new since `before` (null: all is).
+void add_look(const Design& design, const std::vector<Cut>& cuts, const TestPlan& plan, const TestPlan* before,
+              double futility, TestTable& table) {
+    add_row(design, cuts, plan, table);
+    const auto df = [](std::uint32_t n, std::uint32_t had) { return std::fmax(0.0, double(n) - double(had) - 1.0); };
+    const StudySize had = before ? before->size : StudySize{0, 0};
+    table.variance.c.pop_back();
+    table.variance.per_cube.pop_back();
+    table.variance.add(df(plan.size.n1, had.n1) + df(plan.size.n2, had.n2), 1.0);
+    table.futility.resize(table.n1.size(), -infinity);
+    table.futility.back() = futility;
+}
+
+/// Looks of designs that plan them.
+void add_planned_looks(const Design& design, const std::vector<Cut>& cuts, const LookPlans& looks, TestTable& table) {
     const std::size_t sizes = table.n1.size();
     for (std::size_t size = 0; size < sizes; ++size) {
-        table.first_look.push_back(static_cast<std::uint32_t>(table.n1.size()));
-        for (std::uint32_t k = 0; k < last; ++k) add_row(design, cuts, looks.plan(table.n1[size], k), table);
-    }
-    table.futility.assign(table.n1.size(), -infinity);
-    ChiColumns increments;
-    const auto add = [&](std::size_t row, std::size_t before, bool is_first) {
-        const auto df = [&](const std::vector<std::uint32_t>& n) {
-            const double more = n[row] - (is_first ? 0.0 : n[before]);
-            return std::fmax(0.0, more - 1.0);
-        };
-        increments.add(df(table.n1) + df(table.n2), 1.0);
-    };
-    for (std::size_t size = 0; size < sizes; ++size) add(size, table.first_look[size] + last - 1, false);
-    for (std::size_t size = 0; size < sizes; ++size) {
-        for (std::uint32_t k = 0; k < last; ++k) {
-            const std::size_t row = table.first_look[size] + k;
-            table.futility[row] = looks.futility(k, table.df[row]);
-            add(row, row - 1, k == 0);
+        table.looks.first.push_back(static_cast<std::uint32_t>(table.n1.size()));
+        table.looks.count.push_back(design.looks.count);
+        TestPlan before{};
+        for (std::uint32_t k = 0; k < design.looks.count; ++k) {
+            const TestPlan plan = looks.plan(table.n1[size], k);
+            add_look(design, cuts, plan, k == 0 ? nullptr : &before, looks.futility(k, plan.df), table);
+            before = plan;
         }
     }
-    table.variance = std::move(increments);
+}
+
+/// Looks of studies that stop when they find, for every size of a kind; sizes in absolute numbers share them.
+LookRows add_unplanned_looks(const Design& design, const std::vector<Cut>& cuts, const OptionalStopping& stopping,
+                             TestTable::Kind kind, std::size_t sizes, TestTable& table) {
+    LookRows rows;
+    rows.first.resize(sizes);
+    rows.count.resize(sizes);
+    for (std::uint32_t s = 0; s < kind.sizes; ++s) {
+        const std::size_t size = kind.first_row + s;
+        if (s > 0 && !stopping.relative) {
+            rows.first[size] = rows.first[kind.first_row];
+            rows.count[size] = rows.count[kind.first_row];
+            continue;
+        }
+        rows.first[size] = static_cast<std::uint32_t>(table.n1.size());
+        TestPlan before{};
+        for (const std::uint32_t n : look_sizes(stopping, table.n1[size], smallest_n(design))) {
+            const TestPlan plan = describe(design, n);
+            add_look(design, cuts, plan, rows.count[size]++ == 0 ? nullptr : &before, -infinity, table);
+            before = plan;
+        }
+    }
+    return rows;
 }
 
 }  // namespace
@@ -162,7 +187,15 @@ TestTable test_table(const Science& science, const std::vector<Cut>& cuts) {
             add_sizes(design, cuts, kind.size, looks, table);
     }
     if (design.welch) add_curves(design, cuts, table);
-    if (looks) add_looks(design, cuts, *looks, table);
+    if (looks) add_planned_looks(design, cuts, *looks, table);
+    const std::size_t sizes = table.n1.size();
+    for (std::size_t k = 0; k < science.labs.size(); ++k) {
+        const Practices& practices = science.labs[k].practices;
+        table.unplanned_looks.emplace_back();
+        if (!practices.any()) continue;
+        table.unplanned_looks.back() =
+            add_unplanned_looks(design, cuts, practices.optional_stopping, table.kinds[k], sizes, table);
+    }
     return table;
 }
 

@@ -1,6 +1,6 @@
 // Everything the sampling of a study needs that depends on its size alone, one row per possible size,
-// as columns for the vector kernels. Rows of several lab kinds stand one after the other; rows of interim
-// looks stand behind them all.
+// as columns for the vector kernels. Rows of several lab kinds stand one after the other; rows of looks
+// at the data stand behind them all.
 #pragma once
 
 #include <cstddef>
@@ -31,6 +31,13 @@ struct ChiColumns {
     void add(double df, double divisor);
 };
 
+/// The looks of each size (by its row): `count` rows from `first` on, in order. Their chi-squared is that of
+/// the look's new observations.
+struct LookRows {
+    std::vector<std::uint32_t> first, count;
+    bool empty() const { return first.empty(); }
+};
+
 struct TestTable {
     // One entry per row.
     std::vector<std::uint32_t> n1, n2;      // n2 = 0 for designs with one group
@@ -43,7 +50,7 @@ struct TestTable {
     std::vector<double> equivalence_critical;  // of a one-sided test of equivalence; what it bounds, the design knows
     std::vector<double> df_effect;          // of an F statistic's numerator
     std::vector<double> size1, size2;       // n1 and n2, for vector code
-    ChiColumns variance;                    // of the sample, over the true one; of a look's new observations
+    ChiColumns variance;                    // of the sample, over the true one
     ChiColumns other;                       // see sim/design/studies.h
     std::vector<std::vector<double>> cut_critical;  // [cut][row]: critical value of a p rule's step
 
@@ -51,10 +58,11 @@ struct TestTable {
     CriticalCurve curve, equivalence_curve;
     std::vector<CriticalCurve> cut_curves;  // per cut
 
-    // Of designs with interim looks: the row of a size's first look (the others follow, but for the last
-    // look, which has the size's own row), and the bound of |T| or T below which a look stops for futility.
-    std::vector<std::uint32_t> first_look;
+    // Rows of looks stand behind the sizes; `futility` of such a row is the bound of |T| or T below which the
+    // look stops the study.
     std::vector<double> futility;
+    LookRows looks;                        // of designs with interim looks
+    std::vector<LookRows> unplanned_looks;  // of kinds with optional stopping; empty for others
 
     // Sizes by the alias method (sim/variate/alias.h): each kind has `sizes` rows from `first_row`
     // on; of its column that stands at `row`, `keep` stays there and the rest goes to row `other_row`.

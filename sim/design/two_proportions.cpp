@@ -100,8 +100,8 @@ std::uint32_t planned_n(double base_rate, double effect, double power, double cr
     const double p1 = rate(base_rate, effect);
     const auto rough = [&](std::uint32_t n) { return rough_power(n, other_size(n, allocation), p1, base_rate, critical); };
     const auto falls_short = [&](std::uint32_t n) {
-        const double teeth = 2.5 / std::sqrt(n * std::fmin(p1 * (1.0 - p1), base_rate * (1.0 - base_rate)));
-        return rough(n) < power - std::fmin(0.25, 0.01 + teeth);
+        const double spread = n * std::fmin(p1 * (1.0 - p1), base_rate * (1.0 - base_rate));
+        return rough(n) < power - std::fmin(0.25, 0.8 / std::sqrt(spread) + 4.0 / spread);
     };
     std::uint32_t low = smallest_n, high = smallest_n;
     while (high < largest && falls_short(high)) {

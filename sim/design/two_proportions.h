@@ -33,7 +33,7 @@ Tails tails(double critical, std::uint32_t n1, std::uint32_t n2, double base_rat
 
 /// The smallest n1 (n2 next to allocation times that) with this power. Power is saw-toothed in n: sizes are gone
 /// through one by one from where the normal approximation falls short of the target by more than the teeth can
-/// bridge (0.01 + 2.5 / sqrt(n p (1 - p)), at most 0.25; found by going through grids, no proof). 0 where none up to 10^7 has it.
+/// bridge (0.8 / sqrt(n p q) + 4 / (n p q), at most 0.25; found by going through grids, no proof). 0 where none up to 10^7 has it.
 std::uint32_t planned_n(double base_rate, double effect, double power, double critical, int sides, double allocation);
 
 /// The size of the second group.

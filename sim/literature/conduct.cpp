@@ -183,13 +183,16 @@ void scale_by_planned(const PreparedScience& science, const std::uint8_t* kind, 
 }
 
 /// Room for `size` studies.
-void make_room(const Design& design, Studies& studies, std::size_t size) {
+void make_room(const PreparedScience& science, Studies& studies, std::size_t size) {
+    const Design& design = science.science.design;
     studies.line.resize(size);
     studies.row.resize(size);
     studies.theta.resize(size);
     studies.statistic.resize(size);
     studies.estimate.resize(size);
     studies.claim.resize(size);
+    studies.looks.resize(science.has_looks() ? size : 0);
+    studies.stopped.resize(science.has_practices() ? size : 0);
     studies.df.resize(fills_df(design) ? size : 0);
     studies.standard_error.resize(fills_standard_error(design) ? size : 0);
     if (!studies.planned.empty()) studies.planned.resize(size);
@@ -234,7 +237,7 @@ void run_round(const PreparedScience& science, StreamKey key, std::uint16_t numb
     Studies& studies = block.studies;
     const std::size_t begin = studies.round.back();
     const std::size_t count = scratch.active.size();
-    make_room(science.science.design, studies, begin + count + room_beyond);
+    make_room(science, studies, begin + count + room_beyond);
     std::copy(scratch.active.begin(), scratch.active.end(), studies.line.begin() + static_cast<std::ptrdiff_t>(begin));
     const std::uint32_t* line = studies.line.data() + begin;
     const bool every_line = count == lines.studies.size();
@@ -245,7 +248,8 @@ void run_round(const PreparedScience& science, StreamKey key, std::uint16_t numb
                            studies.estimate.data() + begin,
                            studies.claim.data() + begin,
                            studies.df.empty() ? nullptr : studies.df.data() + begin,
-                           studies.standard_error.empty() ? nullptr : studies.standard_error.data() + begin};
+                           studies.standard_error.empty() ? nullptr : studies.standard_error.data() + begin,
+                           studies.looks.empty() ? nullptr : studies.looks.data() + begin};
     const std::uint8_t* kinds = kinds_of(lines, every_line, count, line, scratch);
     const double* planned = planned_of(science, line, begin, count, block);
     double* theta = studies.theta.data() + begin;
@@ -253,6 +257,9 @@ void run_round(const PreparedScience& science, StreamKey key, std::uint16_t numb
     draw_thetas(science, round, every_line, block, line, scratch, theta);
     scale_by_planned(science, kinds, planned, count, true, theta);
     draw_studies(round, science.science.design, science.table, scratch.sampling, batch);
+    if (science.has_practices()) {
+        bend_studies(science, round, kinds, scratch.sampling, scratch.bent, batch, studies.stopped.data() + begin);
+    }
     scale_by_planned(science, kinds, planned, count, false, theta);
     scale_by_planned(science, kinds, planned, count, false, batch.estimate);
     count_claims(every_line, count, line, batch.claim, lines);
@@ -297,7 +304,7 @@ void run_studies(const PreparedScience& science, StreamKey key, ConductScratch& 
         if (science.longest_line == 1u) break;
         keep_going(science, lines, scratch);
     }
-    make_room(science.science.design, block.studies, block.studies.round.back());
+    make_room(science, block.studies, block.studies.round.back());
     count_levels(science, block.studies);
 }
 

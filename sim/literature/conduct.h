@@ -6,6 +6,7 @@
 
 #include "sim/design/sampling.h"
 #include "sim/literature/prepared.h"
+#include "sim/literature/bend.h"
 #include "sim/literature/roster.h"
 #include "sim/model/columns.h"
 
@@ -25,6 +26,7 @@ struct ConductScratch {
     std::vector<std::uint32_t> chosen, active, still;
     std::vector<std::uint64_t> places;
     std::vector<std::uint8_t> kinds;
+    BentStudies bent;
 };
 
 /// Fills `block` with the questions of `range`, its part of their lines, and their studies. A pure

@@ -149,6 +149,8 @@ void add_studies(const PreparedScenario& prepared, std::size_t science, const Co
         .next([&](std::size_t i) { return studies.statistic[at(i)]; })
         .next([&](std::size_t i) { return studies.df.empty() ? table.df[row(i)] : studies.df[at(i)]; })
         .next([&](std::size_t i) { return p[at(i)]; })
+        .next([&](std::size_t i) { return studies.looks.empty() ? 1 : studies.looks[at(i)]; })
+        .next([&](std::size_t i) { return studies.stopped.empty() ? 0 : studies.stopped[at(i)]; })
         .next([&](std::size_t i) { return block.questions.truth[lines.question[line(i)]]; })
         .next([&](std::size_t i) { return studies.claim[at(i)]; });
     for (std::size_t r = 0; r < outcomes.size(); ++r) {

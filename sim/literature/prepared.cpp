@@ -89,6 +89,10 @@ bool PreparedScience::plans_for_truth() const {
                        [](const LabKind& lab) { return lab.size.for_each_question() && lab.size.effect.is_true; });
 }
 
+bool PreparedScience::has_practices() const {
+    return std::any_of(science.labs.begin(), science.labs.end(), [](const LabKind& lab) { return lab.practices.any(); });
+}
+
 std::size_t PreparedScenario::kind_code(const std::string& name) const {
     return static_cast<std::size_t>(std::find(kind_names.begin(), kind_names.end(), name) - kind_names.begin());
 }

@@ -26,6 +26,10 @@ struct PreparedScience {
     bool plans_for_questions() const;
     bool plans_for_truth() const;
 
+    /// Whether some kind of labs bends its analyses; whether some study has several looks at its data.
+    bool has_practices() const;
+    bool has_looks() const { return science.design.looks.count > 1 || has_practices(); }
+
     /// Whether it must be known which kind of lab runs a line, or even which lab.
     bool who_matters() const { return labs_are_stored || science.labs.size() > 1; }
 

@@ -37,6 +37,8 @@ struct Studies {
     std::vector<double> statistic;
     std::vector<double> estimate;
     std::vector<std::uint8_t> claim;      // a Claim
+    std::vector<std::uint16_t> looks;     // at the data; empty where each had one
+    std::vector<std::uint8_t> stopped;    // 1: run with optional stopping; empty where none was
     std::vector<double> df;               // where they depend on the data; else empty
     std::vector<double> standard_error;   // where the estimate does not give it; else empty
     std::vector<double> planned;          // effect the study was planned for; empty when none plans for each question

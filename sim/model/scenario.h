@@ -69,6 +69,7 @@ struct SizePlan {
     PlanningEffect effect;        // power, exact_power
     std::uint32_t most = 10000;   // power for true effects: no study is larger
 
+    double optimism_of_truth() const { return effect.is_true ? effect.optimism : 1.0; }
     bool for_each_question() const {
         return kind == Kind::exact_power || (kind == Kind::power && effect.is_true);
     }
@@ -134,6 +135,24 @@ struct LineRule {
     bool operator==(const LineRule&) const = default;
 };
 
+/// Testing after every batch, and stopping when significant, without a correction for the looks.
+struct OptionalStopping {
+    bool used = false;
+    double chance = 0.0;                  // that a study is run so
+    bool relative = false;                // sizes are multiples of the planned n
+    double start = 0, batch = 0, limit = 0;  // per group: at the first look, more at each, at the last
+
+    bool operator==(const OptionalStopping&) const = default;
+};
+
+/// What bends a kind's analyses.
+struct Practices {
+    OptionalStopping optional_stopping;
+
+    bool any() const { return optional_stopping.used && optional_stopping.chance > 0.0; }
+    bool operator==(const Practices&) const = default;
+};
+
 /// [[lab]]: a kind of lab.
 struct LabKind {
     std::string name = "lab";
@@ -141,6 +160,7 @@ struct LabKind {
     Distribution lines = Distribution::fixed(1.0);    // lines a lab runs, rounded to nearest
     LineRule studies;
     SizePlan size;                                    // the design's, unless the kind has its own
+    Practices practices{};
 
     bool operator==(const LabKind&) const = default;
 };

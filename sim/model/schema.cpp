@@ -78,6 +78,8 @@ TableSpec studies_table(const std::vector<std::string>& regimes) {
         {"statistic", ColumnType::f64, "1", "t, z or F", {}},
         {"df", ColumnType::f64, "1", "degrees of freedom (of an F's denominator); infinite for z", {}},
         {"p", ColumnType::f64, "1", "of the design's test, one- or two-sided; with interim looks as if there were none", {}},
+        {"looks", ColumnType::i32, "looks", "looks at the data before the study ended, the last included", {}},
+        {"optional_stopping", ColumnType::u8, "1", "1: tested after every batch, and stopped when significant", {}},
         {"truth", ColumnType::u8, "1", "truth of the question", labels(truth_names)},
         {"claim", ColumnType::u8, "1", "what the study says", labels(claim_names)}};
     table.columns.insert(table.columns.end(), own.begin(), own.end());

@@ -35,7 +35,8 @@ enum class Purpose : std::uint8_t {
     question_plan_again = 17,   // after a draw fell outside the truncation bounds
     study_other_data = 18,      // as study_data, for a second chi-squared or a second group
     study_other_test = 19,      // further bits of its acceptance test
-    study_other_again = 20      // draws after a rejection
+    study_other_again = 20,     // draws after a rejection
+    optional_stopping = 21      // is the study run with it
 };
 
 /// The key of all streams of a run.

@@ -100,6 +100,7 @@ std::string beyond_reach(const Science& science) {
     if (design.equivalence.tested()) return "equivalence is tested";
     for (const LabKind& kind : science.labs) {
         if (kind.size.for_each_question()) return "sizes are planned for each question";
+        if (kind.practices.any()) return "labs use practices that bend analyses";
     }
     return "";
 }

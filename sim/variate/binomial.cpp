@@ -20,7 +20,7 @@ namespace hn = hwy::HWY_NAMESPACE;
 struct Search {
     using F = hn::ScalableTag<double>;
     using V = hn::Vec<F>;
-    V size, odds, chance, left, found;
+    V size, odds, mean, chance, left, found;
     hn::Mask<F> going;
 };
 
@@ -31,6 +31,7 @@ HWY_INLINE Search begin(const double* n, const double* p, const double* u) {
     const auto rate = hn::LoadU(f, p);
     s.size = hn::LoadU(f, n);
     s.odds = hn::Div(rate, hn::Sub(one, rate));
+    s.mean = hn::Mul(s.size, rate);
     s.chance = hn::Exp(f, hn::Mul(s.size, hn::Log1p(f, hn::Neg(rate))));
     s.left = hn::LoadU(f, u);
     s.found = hn::Zero(f);
@@ -38,7 +39,8 @@ HWY_INLINE Search begin(const double* n, const double* p, const double* u) {
     return s;
 }
 
-/// A lane goes on while what is left of u is not below the chance of its x, and x < n.
+/// A lane goes on while what is left of u is not below the chance of its x, and x < n; but not far above the mean
+/// where chances have vanished, which only the rounding of u can reach.
 HWY_INLINE void step(Search& s, double x, double inverse) {
     const Search::F f;
     const auto now = hn::Set(f, x);
@@ -46,7 +48,8 @@ HWY_INLINE void step(Search& s, double x, double inverse) {
     const auto factor = hn::Mul(hn::Sub(s.size, hn::Set(f, x - 1.0)), hn::Mul(s.odds, hn::Set(f, inverse)));
     s.chance = hn::Mul(s.chance, factor);
     s.found = hn::IfThenElse(s.going, now, s.found);
-    s.going = hn::And(s.going, hn::And(hn::Ge(s.left, s.chance), hn::Gt(s.size, now)));
+    const auto vanished = hn::And(hn::Lt(s.chance, hn::Set(f, 0x1p-80)), hn::Gt(now, s.mean));
+    s.going = hn::AndNot(vanished, hn::And(s.going, hn::And(hn::Ge(s.left, s.chance), hn::Gt(s.size, now))));
 }
 
 void SearchFromZero(const double* n, const double* p, const double* u, std::size_t count, double* out) {

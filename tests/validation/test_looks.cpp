@@ -88,9 +88,11 @@ TEST_CASE("Power with looks and stops for futility is the recursion's, known var
 
 TEST_CASE("Two means with looks against participants: claims, sizes and estimates", "[validation]") {
     const std::size_t studies = 100000;
-    Design design = with_looks(Test::two_means, Looks::Boundary::pocock, 3, 2, 13);  // looks at 4, 9 and 13 a group
+    // Looks at 4, 9 and 13 of the first group; a second one so small that it has nobody new at a look.
+    const double allocation = GENERATE(1.5, 0.2);
+    Design design = with_looks(Test::two_means, Looks::Boundary::pocock, 3, 2, 13);
     design.looks.futility = 0.3;
-    design.allocation = 1.5;
+    design.allocation = allocation;
     const double effect = 0.6;
     const Result fast = simulated(design, effect, studies, true);
     const LookPlans looks(design);
