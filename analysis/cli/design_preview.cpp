@@ -26,10 +26,12 @@ struct Sizes {
 /// Of studies planned for each question: at the planning effect of a question of mean effect, and the range
 /// over the middle 99.8 % of effects.
 Sizes planned_sizes(const Regime& regime, const SizePlan& size) {
-    const PlanTable plan(regime.science.design, size.power, size.most);
     const Distribution& effects = regime.science.field.effect;
+    const double lower = quantile(effects, 0.001), upper = quantile(effects, 0.999);
+    const double least = lower > 0.0 ? lower : upper < 0.0 ? -upper : 0.0;
+    const PlanTable plan(regime.science.design, size.power, size.most, size.effect.optimism * least);
     const auto n = [&](double effect) { return plan.first() + plan.position(size.effect.optimism * effect); };
-    const auto [low, high] = std::minmax({n(quantile(effects, 0.001)), n(quantile(effects, 0.999)), n(mean(effects))});
+    const auto [low, high] = std::minmax({n(lower), n(upper), n(mean(effects))});
     return {n(mean(effects)), low, high};
 }
 

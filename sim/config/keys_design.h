@@ -44,8 +44,6 @@ void describe(V& v, PlanningEffect& effect, const Design& design) {
             "must be above 0 for a one-sided test", "");
     v.check({"effect"}, [&] { return effect.is_true || can_be_effect(design.test, effect.value); },
             effect_limits(design.test), "");
-    v.check({"effect"}, [&] { return !effect.is_true || design.test != Test::two_proportions; },
-            "must be a number for test = \"two-proportions\", whose power is not monotone in n", "");
 }
 
 /// `design` gives the test, alpha and sides that a size is planned for.
@@ -84,10 +82,10 @@ void describe(V& v, SizePlan& size, const Design& design) {
             "must be a number for Welch's test of unequal groups", "plan for a number, or set allocation = 1");
     v.check({"most", "effect", "plan"},
             [&] {
-                const bool slow = design.allocation != std::floor(design.allocation);
+                const bool slow = design.test == Test::two_proportions || design.allocation != std::floor(design.allocation);
                 return !(size.kind == Kind::power && size.effect.is_true && slow) || size.most <= 20000;
             },
-            "must be 20000 or less where allocation is not a whole number", "");
+            "must be 20000 or less for two proportions, and where allocation is not a whole number", "");
     v.check({"most"}, [&] { return size.kind != Kind::power || size.effect.is_true || size.most == SizePlan{}.most; },
             "needs effect = \"true\"", "");
     v.variant("plan", size.kind, Kind::exact_power, [&] {

@@ -71,7 +71,11 @@ bool may_be_zero(const Distribution& effect) {
 void demand_possible_effects(const Science& science, Limits& limits) {
     const Test test = science.design.test;
     const auto possible = [&](const Distribution& effect) {
-        return can_be_effect(test, lowest_draw(effect)) && can_be_effect(test, highest_draw(effect));
+        // Where the scale has an end that no draw may reach, bounds count; else what is drawn in practice.
+        const bool bounded = test == Test::correlation;
+        const double low = test == Test::two_proportions ? practical_lowest_draw(effect) : lowest_draw(effect);
+        const double high = bounded ? highest_draw(effect) : practical_highest_draw(effect);
+        return can_be_effect(test, low) && can_be_effect(test, high);
     };
     limits.demand(possible(science.field.effect), "field.effect", effect_limits(test), "bound it with min and max");
     limits.demand(possible(science.field.null_effect), "field.null_effect", effect_limits(test),

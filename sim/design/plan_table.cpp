@@ -27,11 +27,14 @@ double where_passes(F f, double target, double guess, double most) {
 }
 
 /// Effects end somewhere on some scales.
-double largest_effect_of(Test test) { return test == Test::correlation ? 1.0 - 1e-12 : 1e6; }
+double largest_effect_of(Test test) {
+    if (test == Test::correlation) return 1.0 - 1e-12;
+    return test == Test::two_proportions ? 30.0 : 1e6;
+}
 
-double exact_least_effect(const Design& design, double target, std::uint32_t n, double guess) {
+double exact_least_effect(const Design& design, double target, std::uint32_t n, double guess, double sign = 1.0) {
     const TestPlan plan = describe(design, n);
-    return where_passes([&](double effect) { return power(design, plan, effect); }, target, guess,
+    return where_passes([&](double effect) { return power(design, plan, sign * effect); }, target, guess,
                         largest_effect_of(design.test));
 }
 
@@ -82,40 +85,63 @@ private:
 
 }  // namespace
 
-PlanTable::PlanTable(const Design& design, double target_power, std::uint32_t most) : first_(smallest_n(design)) {
+PlanTable::PlanTable(const Design& design, double target_power, std::uint32_t most, double least_planned)
+    : first_(smallest_n(design)) {
     most = std::max(most, first_);
-    const bool smooth = design.allocation == std::floor(design.allocation);
+    up_ = direction(design, target_power, most, least_planned, 1.0);
+    if (design.test != Test::two_proportions || design.sides == 1) return;
+    down_ = direction(design, target_power, most, least_planned, -1.0);
+    // Rows are alike for both directions.
+    const std::size_t sizes = std::max(up_.least_effect.size(), down_.least_effect.size());
+    up_.least_effect.resize(sizes, up_.least_effect.back());
+    down_.least_effect.resize(sizes, down_.least_effect.back());
+}
+
+PlanTable::Direction PlanTable::direction(const Design& design, double target, std::uint32_t most, double least_planned,
+                                          double sign) const {
+    Direction its;
+    const bool smooth = design.test != Test::two_proportions && design.allocation == std::floor(design.allocation);
     double guess = design.test == Test::correlation ? 0.9 : 2.0;
     std::uint32_t n = first_;
-    for (; n <= most && (n <= exact_up_to || !smooth); ++n) {
-        guess = exact_least_effect(design, target_power, n, guess);
-        least_effect_.push_back(guess);
+    const auto goes_on = [&] { return n <= most && (its.least_effect.empty() || its.least_effect.back() > least_planned); };
+    // A size counts by the least effect up to it: where power is not monotone in n, larger ones may need more.
+    const auto add = [&](double effect) {
+        its.least_effect.push_back(its.least_effect.empty() ? effect : std::fmin(effect, its.least_effect.back()));
+    };
+    for (; goes_on() && (n <= exact_up_to || !smooth); ++n) {
+        guess = exact_least_effect(design, target, n, guess, sign);
+        add(guess);
     }
-    while (n <= most) {
+    while (goes_on()) {
         const std::uint32_t high = std::min(most, 2 * n);
-        const Octave octave(design, target_power, n, std::max(high, n + 1), guess);
-        for (; n <= high; ++n) least_effect_.push_back(octave.least_effect(n));
-        guess = least_effect_.back();
+        const Octave octave(design, target, n, std::max(high, n + 1), its.least_effect.back());
+        for (; n <= high; ++n) add(octave.least_effect(n));
     }
-    // n grows about as the inverse square of the effect, so equal steps of that are good places to start.
-    const double last = 1.0 / (least_effect_.back() * least_effect_.back());
-    const std::size_t steps = 2 * least_effect_.size() + 1;
-    starts_per_inverse_ = static_cast<double>(steps - 1) / last;
+    its.make_starts();
+    return its;
+}
+
+/// n grows about as the inverse square of the effect, so equal steps of that are good places to start.
+void PlanTable::Direction::make_starts() {
+    const double last = 1.0 / (least_effect.back() * least_effect.back());
+    const std::size_t steps = 2 * least_effect.size() + 1;
+    starts_per_inverse = static_cast<double>(steps - 1) / last;
     std::uint32_t at = 0;
     for (std::size_t s = 0; s < steps; ++s) {
-        const double effect = s == 0 ? infinity : std::sqrt(starts_per_inverse_ / static_cast<double>(s));
-        while (at + 1 < least_effect_.size() && least_effect_[at] > effect) ++at;
-        start_.push_back(at);
+        const double effect = s == 0 ? infinity : std::sqrt(starts_per_inverse / static_cast<double>(s));
+        while (at + 1 < least_effect.size() && least_effect[at] > effect) ++at;
+        start.push_back(at);
     }
 }
 
-std::uint32_t PlanTable::position(double effect) const {
+std::uint32_t PlanTable::Direction::position(double effect) const {
     const double size = std::fabs(effect);
-    const auto last = static_cast<std::uint32_t>(least_effect_.size() - 1);
-    if (!(size >= least_effect_[last])) return last;
-    const double step = starts_per_inverse_ / (size * size);
-    std::uint32_t at = start_[std::min(static_cast<std::size_t>(step), start_.size() - 1)];
-    while (least_effect_[at] > size) ++at;
+    const auto last = static_cast<std::uint32_t>(least_effect.size() - 1);
+    if (!(size >= least_effect[last])) return last;
+    const double step = starts_per_inverse / (size * size);
+    std::uint32_t at = start[std::min(static_cast<std::size_t>(step), start.size() - 1)];
+    while (least_effect[at] > size) ++at;
+    while (at > 0 && least_effect[at - 1] <= size) --at;
     return at;
 }
 

@@ -74,10 +74,17 @@ void add_sizes(const Design& design, const std::vector<Cut>& cuts, const SizePla
     table.kinds.push_back({first, static_cast<std::uint32_t>(sizes.chance.size()), {}, false});
 }
 
+/// The least absolute effect that is drawn; 0 where effects of both signs are.
+double least_size(const Distribution& effect) {
+    const double low = quantile(effect, 0x1p-53), high = quantile(effect, 1.0 - 0x1p-53);
+    return low > 0.0 ? low : high < 0.0 ? -high : 0.0;
+}
+
 /// Sizes that follow each question's effect: a row for each of them.
-void add_planned_sizes(const Design& design, const std::vector<Cut>& cuts, const SizePlan& size, TestTable& table) {
+void add_planned_sizes(const Design& design, const std::vector<Cut>& cuts, const SizePlan& size,
+                       const Distribution& effect, TestTable& table) {
     const auto first = static_cast<std::uint32_t>(table.n1.size());
-    const PlanTable plan(design, size.power, size.most);
+    const PlanTable plan(design, size.power, size.most, size.effect.optimism * least_size(effect));
     for (std::uint32_t n = plan.first(); n <= plan.most(); ++n) {
         add_row(design, cuts, describe(design, n), table);
         table.keep.push_back(1.0);
@@ -182,7 +189,7 @@ TestTable test_table(const Science& science, const std::vector<Cut>& cuts) {
         if (kind.size.kind == SizePlan::Kind::exact_power)
             add_exact_power(design, cuts, kind.size, table);
         else if (kind.size.for_each_question())
-            add_planned_sizes(design, cuts, kind.size, table);
+            add_planned_sizes(design, cuts, kind.size, science.field.effect, table);
         else
             add_sizes(design, cuts, kind.size, looks, table);
     }

@@ -240,6 +240,26 @@ TEST_CASE("Sizes planned for each question's effect are those planned one by one
     }
 }
 
+TEST_CASE("Two proportions planned for each question's effect: as one by one, though power is saw-toothed", "[design]") {
+    for (const double allocation : {1.0, 1.5}) {
+        Design design = make(Test::two_proportions, 0.05, 2);
+        design.base_rate = 0.3;
+        design.allocation = allocation;
+        const PlanTable table(design, 0.8, 400, 0.4);
+        for (const double effect : {0.5, 0.61, 0.72, 0.8, 0.95, 1.1, 1.3, 1.7, 2.4, 5.0, -0.7, -0.9, -1.0, -1.4, -2.0}) {
+            INFO("effect " << effect << " allocation " << allocation);
+            CHECK(table.first() + table.position(effect) == std::min(400u, planned_n(design, 0.8, effect)));
+        }
+    }
+}
+
+TEST_CASE("A table of sizes ends where the least planned effect needs no more", "[design]") {
+    const PlanTable table(Design{}, 0.8, 5000, 0.35);
+    CHECK(table.most() < 300);
+    CHECK(table.first() + table.position(0.35) == planned_n(Design{}, 0.8, 0.35));
+    CHECK(table.first() + table.position(0.9) == planned_n(Design{}, 0.8, 0.9));
+}
+
 TEST_CASE("An exact power is exact", "[design]") {
     for (const Test test : {Test::two_means, Test::one_mean, Test::known_variance}) {
         for (const double target : {0.06, 0.5, 0.999}) {
