@@ -25,7 +25,7 @@ void check_sizes(V& v, const SizePlan& size, const Design& design) {
     v.check(
         {"max", "min", "plan", "family", "value", "mean", "sd", "median", "sdlog", "shape", "concentration", "low",
          "high", "values", "weights", "clamp"},
-        [&] { return !drawn() || is_tabulated(size); }, "must not spread over more than 4194304 sizes",
+        [&] { return !drawn() || is_tabulated(size); }, "must not spread over more than 2097152 sizes",
         "lower max or raise min");
 }
 

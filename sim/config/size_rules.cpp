@@ -13,7 +13,7 @@ constexpr double largest_log_odds_ratio = 30.0;
 }  // namespace
 
 bool is_tabulated(const SizePlan& size) {
-    return practical_highest_draw(size.distribution) - lowest_draw(size.distribution) <= 0x1p22;
+    return practical_highest_draw(size.distribution) - lowest_draw(size.distribution) <= 0x1p21;  // so many that words of 32 bits pick them exactly
 }
 
 double rough_planned_n(const SizePlan& size, const Design& design) {

@@ -5,7 +5,7 @@
 
 namespace lacuna {
 
-/// Whether rounding `size.distribution` gives at most 2^22 different sizes, which the engine tabulates.
+/// Whether rounding `size.distribution` gives at most 2^21 different sizes, which the engine tabulates.
 bool is_tabulated(const SizePlan& size);
 
 inline constexpr std::uint32_t largest_tabulated_n = 1u << 20;

@@ -30,17 +30,8 @@ HWY_INLINE void store_chi(const ChiColumns& chi, I2 rows, F2 error, F2 x, F2 spa
 /// `other_v` holds the normals behind the second chi-squared, and is filled with it; null where there is none.
 void Errors(const StudyRound& round, const ChiColumns& chi, const ChiColumns& other, const std::uint32_t* row,
             SamplingScratch& scratch, double* z, double* v, double* other_v) {
-    const RoundKeys keys(round.key);
-    const std::size_t lanes = 2 * hn::Lanes(F64());
     const std::size_t count = round.entities.count;
-    const auto draw = [&](std::size_t at) HWY_ATTR {
-        const U2 block = entity_blocks(round, at, HWY_MIN(lanes, count - at));
-        return philox(counter(round.address(Purpose::study_data), block), keys);
-    };
-    Block next = count > 0 ? draw(0) : Block{};
-    for (std::size_t at = 0; at < count; at += lanes) {
-        const Block bits = next;
-        if (at + lanes < count) next = draw(at + lanes);
+    for_data(round, [&](std::size_t at, const Block& bits) HWY_ATTR {
         const Pair data = normal_pair(bits);
         const I2 rows = load_rows(row + at);
         store(data.first, z + at);
@@ -49,7 +40,7 @@ void Errors(const StudyRound& round, const ChiColumns& chi, const ChiColumns& ot
             const F2 x = load(other_v + at);
             store_chi(other, rows, data.first, x, other_spare_bits(bits), at, count, scratch.other_draws, other_v);
         }
-    }
+    });
 }
 
 }  // namespace lacuna::HWY_NAMESPACE

@@ -56,10 +56,4 @@ Tails LookPlans::tails(std::uint32_t n, double drift) const {
     return {its.predicted, its.reversed};
 }
 
-double LookPlans::inflation(double power) const {
-    const double fixed = drift_of_power({1.0}, {t_critical(infinity, design_.alpha / design_.sides)}, design_.sides, power);
-    const double drift = drift_of_power(information_, bound_, design_.sides, power);
-    return (drift / fixed) * (drift / fixed);
-}
-
 }  // namespace lacuna

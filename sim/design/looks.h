@@ -29,9 +29,6 @@ public:
     /// with this drift there, its looks where rounding puts them: exact where the variance is known.
     Tails tails(std::uint32_t n, double drift) const;
 
-    /// The factor by which the looks enlarge a fixed design of this power (without stops for futility).
-    double inflation(double power) const;
-
 private:
     Design design_;  // without its looks
     Looks looks_;

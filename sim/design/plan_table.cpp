@@ -12,13 +12,13 @@ namespace {
 constexpr std::uint32_t exact_up_to = 64;
 constexpr std::uint32_t nodes_an_octave = 14;
 
-/// The x in (0, most) at which an increasing function passes `target`; `most` if it does not.
+/// The x in (0, most] at which an increasing function passes `target`; infinity if it does not. 0 < guess <= most.
 template <class F>
 double where_passes(F f, double target, double guess, double most) {
     const auto above = [&](double x) { return f(x) - target; };
     double low = guess, high = guess;
     while (high < most && above(high) < 0.0) high = std::fmin(most, 1.3 * high);
-    if (high == most && above(most) < 0.0) return most;
+    if (high == most && above(most) < 0.0) return infinity;
     while (above(low) > 0.0 && low > 1e-9) low /= 1.3;  // at 0 the power is alpha, to rounding
     if (low == high || above(low) > 0.0) return low;
     std::uintmax_t steps = 100;
@@ -109,8 +109,9 @@ PlanTable::Direction PlanTable::direction(const Design& design, double target, s
         its.least_effect.push_back(its.least_effect.empty() ? effect : std::fmin(effect, its.least_effect.back()));
     };
     for (; goes_on() && (n <= exact_up_to || !smooth); ++n) {
-        guess = exact_least_effect(design, target, n, guess, sign);
-        add(guess);
+        const double effect = exact_least_effect(design, target, n, guess, sign);
+        add(effect);
+        if (effect < infinity) guess = effect;
     }
     while (goes_on()) {
         const std::uint32_t high = std::min(most, 2 * n);

@@ -43,21 +43,11 @@ HWY_INLINE void student_studies(const TestTable& table, bool two_sided, Pair dat
 /// multiple of 2 * Lanes entries.
 void Studies(const StudyRound& round, bool two_sided, const TestTable& table, SamplingScratch& scratch,
              const StudyBatch& batch) {
-    const RoundKeys keys(round.key);
-    const std::size_t lanes = 2 * hn::Lanes(F64());
     const std::size_t count = round.entities.count;
-    const auto draw = [&](std::size_t at) HWY_ATTR {
-        const U2 block = entity_blocks(round, at, HWY_MIN(lanes, count - at));
-        return philox(counter(round.address(Purpose::study_data), block), keys);
-    };
-    // The next block is drawn while this one's polynomials wait for each other.
-    Block next = count > 0 ? draw(0) : Block{};
-    for (std::size_t at = 0; at < count; at += lanes) {
-        const Block bits = next;
-        if (at + lanes < count) next = draw(at + lanes);
+    for_data(round, [&](std::size_t at, const Block& bits) HWY_ATTR {
         const Pair data = normal_pair(bits);
         student_studies(table, two_sided, data, spare_bits(bits), batch, at, count, scratch);
-    }
+    });
 }
 
 /// Sizes of one kind by the alias method from `words`; entries whose word does not decide are listed.

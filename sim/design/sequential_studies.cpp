@@ -52,7 +52,12 @@ void draw_sequential_studies(const StudyRound& round, const Design& design, cons
         look.entities = {round.entities.first, active == count && !round.entities.offsets ? nullptr : its.offsets.data(),
                          active};
         for (auto* column : {&scratch.z, &scratch.v, &scratch.other_z}) column->resize(active + 16);
-        draw_errors(look, table.variance, its.row.data(), scratch, scratch.z.data(), scratch.v.data());
+        if (variance_known) {  // laid out as for studies of one look, which may stand beside these
+            normals(look.key, look.address(Purpose::study_data), look.entities, scratch.z.data());
+            std::fill(scratch.v.begin(), scratch.v.end(), 0.0);
+        } else {
+            draw_errors(look, table.variance, its.row.data(), scratch, scratch.z.data(), scratch.v.data());
+        }
         if (two_groups) normals(look.key, look.address(Purpose::study_other_data), look.entities, scratch.other_z.data());
         its.still.clear();
         for (std::size_t a = 0; a < active; ++a) {

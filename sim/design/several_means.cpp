@@ -15,7 +15,7 @@ namespace {
 
 namespace policies = boost::math::policies;
 using Quiet = policies::policy<policies::overflow_error<policies::ignore_error>, policies::underflow_error<policies::ignore_error>,
-                               policies::evaluation_error<policies::ignore_error>, policies::promote_double<false>>;
+                               policies::promote_double<false>>;
 
 constexpr double infinite = std::numeric_limits<double>::infinity();
 

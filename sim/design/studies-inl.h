@@ -102,6 +102,25 @@ HWY_INLINE U2 entity_blocks(const StudyRound& round, std::size_t at, std::size_t
     return {hn::LoadU(d, block), hn::LoadU(d, block + hn::Lanes(d))};
 }
 
+/// Calls f(at, block) with the block of every 2 * Lanes studies' data. The next block is drawn while this one's
+/// polynomials wait for each other.
+template <class F>
+HWY_INLINE void for_data(const StudyRound& round, F f) {
+    const RoundKeys keys(round.key);
+    const std::size_t lanes = 2 * hn::Lanes(F64());
+    const std::size_t count = round.entities.count;
+    const auto draw = [&](std::size_t at) HWY_ATTR {
+        const U2 block = entity_blocks(round, at, HWY_MIN(lanes, count - at));
+        return philox(counter(round.address(Purpose::study_data), block), keys);
+    };
+    Block next = count > 0 ? draw(0) : Block{};
+    for (std::size_t at = 0; at < count; at += lanes) {
+        const Block bits = next;
+        if (at + lanes < count) next = draw(at + lanes);
+        f(at, bits);
+    }
+}
+
 }  // namespace lacuna::HWY_NAMESPACE
 HWY_AFTER_NAMESPACE();
 

@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <cmath>
 
+#include "sim/base/fault.h"
 #include "sim/design/design.h"
 #include "sim/design/looks.h"
 #include "sim/design/unplanned_looks.h"
@@ -14,7 +15,7 @@ namespace lacuna {
 
 namespace {
 
-/// The chi-squared variates behind a study (see sim/design/studies.h).
+/// The chi-squared variates behind a study of one look (see sim/design/studies.h).
 void add_variates(const Design& design, const TestPlan& plan, TestTable& table) {
     const double n1 = plan.size.n1, n2 = plan.size.n2;
     if (design.test == Test::known_variance || design.test == Test::two_proportions) {
@@ -39,7 +40,8 @@ double to_estimate(const Design& design, const TestPlan& plan) {
     return (design.estimate == EffectEstimate::g ? plan.correction : 1.0) / plan.noncentrality;
 }
 
-void add_row(const Design& design, const std::vector<Cut>& cuts, const TestPlan& plan, TestTable& table) {
+/// All of a row but its variates.
+void add_facts(const Design& design, const std::vector<Cut>& cuts, const TestPlan& plan, TestTable& table) {
     table.n1.push_back(plan.size.n1);
     table.n2.push_back(plan.size.n2);
     table.participants.push_back(static_cast<std::uint32_t>(plan.participants));
@@ -53,10 +55,14 @@ void add_row(const Design& design, const std::vector<Cut>& cuts, const TestPlan&
     table.critical.push_back(plan.critical);
     table.equivalence_critical.push_back(
         design.equivalence.tested() ? equivalence_critical(design, plan) : -infinity);
-    add_variates(design, plan, table);
     for (std::size_t c = 0; c < cuts.size(); ++c) {
         table.cut_critical[c].push_back(critical_value(design, plan, cuts[c].p, cuts[c].sides));
     }
+}
+
+void add_row(const Design& design, const std::vector<Cut>& cuts, const TestPlan& plan, TestTable& table) {
+    add_facts(design, cuts, plan, table);
+    add_variates(design, plan, table);
 }
 
 void add_sizes(const Design& design, const std::vector<Cut>& cuts, const SizePlan& size,
@@ -118,12 +124,11 @@ void add_curves(const Design& design, const std::vector<Cut>& cuts, TestTable& t
 /// Appends a look: the study as it stands then, and the chi-squared of what is new since `before` (null: all is).
 void add_look(const Design& design, const std::vector<Cut>& cuts, const TestPlan& plan, const TestPlan* before,
               double futility, TestTable& table) {
-    add_row(design, cuts, plan, table);
+    add_facts(design, cuts, plan, table);
     const auto df = [](std::uint32_t n, std::uint32_t had) { return std::fmax(0.0, double(n) - double(had) - 1.0); };
     const StudySize had = before ? before->size : StudySize{0, 0};
-    table.variance.c.pop_back();
-    table.variance.per_cube.pop_back();
     table.variance.add(df(plan.size.n1, had.n1) + df(plan.size.n2, had.n2), 1.0);
+    table.other.add(0.0, 1.0);
     table.futility.resize(table.n1.size(), -infinity);
     table.futility.back() = futility;
 }
@@ -141,6 +146,16 @@ void add_planned_looks(const Design& design, const std::vector<Cut>& cuts, const
             before = plan;
         }
     }
+}
+
+/// Every look of every size is a row.
+void refuse_too_many(std::size_t rows) {
+    if (rows <= std::size_t{1} << 22) return;
+    Fault fault;
+    fault.key = "lab.practices.optional_stopping";
+    fault.message = "the looks of all sizes are more than the 4194304 that are tabulated";
+    fault.remedy = "raise batch, or let sizes spread less";
+    throw InputError(std::move(fault));
 }
 
 /// Looks of studies that stop when they find, for every size of a kind; sizes in absolute numbers share them.
@@ -163,6 +178,7 @@ LookRows add_unplanned_looks(const Design& design, const std::vector<Cut>& cuts,
             add_look(design, cuts, plan, rows.count[size]++ == 0 ? nullptr : &before, -infinity, table);
             before = plan;
         }
+        refuse_too_many(table.n1.size());
     }
     return rows;
 }

@@ -48,8 +48,8 @@ std::vector<TestPlan> some_plans(Design design, const IntegerDistribution& sizes
 }
 
 /// Chances of significant results, quickly: where the exact ones take long, by a noncentral t next to them.
-Tails rough_tails(Design design, const TestPlan& plan, double effect) {
-    design.looks = Looks{};
+/// The designs whose exact ones are taken have no looks.
+Tails rough_tails(const Design& design, const TestPlan& plan, double effect) {
     if (design.test == Test::several_means || design.test == Test::two_proportions) return tails(design, plan, effect);
     const double slope = design.test == Test::correlation ? effect / std::sqrt(1.0 - effect * effect) : effect;
     const double noncentrality = slope * plan.noncentrality;

@@ -156,3 +156,39 @@ detail = "studies"
         if (!stopped[s]) REQUIRE(estimate[s] == clean_estimate[s]);
     }
 }
+
+TEST_CASE("A study that may stop keeps to its own draws, whichever others are run so", "[validation]") {
+    // With known variance one look of the planned size is the study without the practice, to rounding.
+    for (const char* test : {"known-variance", "two-means", "one-mean"}) {
+        INFO(test);
+        Scenario scenario = parse_scenario(fmt::format(R"(
+[run]
+literatures = 2
+[field]
+questions = 1000
+labs = 10
+heterogeneity = 0.1
+[design]
+test = "{}"
+size = {{ plan = "fixed", n = 9 }}
+[[lab]]
+name = "a"
+lines = 100
+[lab.practices]
+optional_stopping = {{ chance = 0.5, start = 9, batch = 1, limit = 9 }}
+[store]
+detail = "studies"
+)",
+                                                       test),
+                                           "t", {});
+        const oracle::Recorded bent = oracle::run(scenario);
+        const auto statistic = oracle::column<double>(scenario, bent, "studies", "statistic");
+        const auto stopped = oracle::column<std::uint8_t>(scenario, bent, "studies", "optional_stopping");
+        scenario.regimes[0].science.labs[0].practices = {};
+        const oracle::Recorded clean = oracle::run(scenario);
+        const auto& expected = oracle::column<double>(scenario, clean, "studies", "statistic");
+        for (std::size_t s = 0; s < statistic.size(); ++s) {
+            if (std::string(test) == "known-variance" || !stopped[s]) REQUIRE(statistic[s] == Approx(expected[s]).epsilon(1e-12).margin(1e-12));
+        }
+    }
+}

@@ -9,20 +9,14 @@
 #include "sim/design/plan_table.h"
 #include "sim/design/two_proportions.h"
 #include "sim/design/welch.h"
+#include "tests/oracle/make_design.h"
 #include "tests/oracle/reference_csv.h"
 
 using namespace lacuna;
+using oracle::make;
 using oracle::number;
 
 namespace {
-
-Design make(Test test, double alpha, int sides) {
-    Design design;
-    design.test = test;
-    design.alpha = alpha;
-    design.sides = sides;
-    return design;
-}
 
 std::uint32_t whole(const std::map<std::string, std::string>& row, const char* name) { return static_cast<std::uint32_t>(number(row, name)); }
 
@@ -251,6 +245,15 @@ TEST_CASE("Two proportions planned for each question's effect: as one by one, th
             CHECK(table.first() + table.position(effect) == std::min(400u, planned_n(design, 0.8, effect)));
         }
     }
+}
+
+TEST_CASE("A size whose power no effect brings up to the target never suffices", "[design]") {
+    // Two and two: the largest z is 2 (2 of 2 against none), below 3.29.
+    Design design = make(Test::two_proportions, 0.001, 2);
+    const PlanTable table(design, 0.8, 300, 1.0);
+    CHECK(std::isinf(table.least_effect(2)));
+    CHECK(table.first() + table.position(30.0) == planned_n(design, 0.8, 30.0));
+    CHECK(table.first() + table.position(1.5) == planned_n(design, 0.8, 1.5));
 }
 
 TEST_CASE("A table of sizes ends where the least planned effect needs no more", "[design]") {

@@ -5,22 +5,12 @@
 #include "sim/base/fault.h"
 #include "sim/design/design.h"
 #include "sim/design/two_means.h"
+#include "tests/oracle/make_design.h"
 #include "tests/oracle/reference_csv.h"
 
 using namespace lacuna;
+using oracle::make;
 using oracle::number;
-
-namespace {
-
-Design make(Test test, double alpha, int sides) {
-    Design design;
-    design.test = test;
-    design.alpha = alpha;
-    design.sides = sides;
-    return design;
-}
-
-}  // namespace
 
 TEST_CASE("Power of two means (reference/power_t.csv)", "[design]") {
     for (const auto& row : oracle::read_reference("power_t.csv").rows) {
